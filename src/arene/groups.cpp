@@ -1,0 +1,115 @@
+#include <GraphMol/SmilesParse/SmilesParse.h>
+#include <GraphMol/SmilesParse/SmilesWrite.h>
+#include <GraphMol/Substruct/SubstructMatch.h>
+#include <fmt/format.h>
+
+#include <algorithm>
+
+#include "toolkit.hpp"
+
+namespace isotally {
+namespace toolkit {
+
+std::string on_benzene(std::string_view group) {
+    return "c1ccccc1" + std::string(group.substr(1));
+}
+
+std::string group_key(const RDKit::ROMol& mol, unsigned ring_atom, unsigned first) {
+    std::vector<int> atoms{static_cast<int>(ring_atom)};
+    std::vector<bool> seen(mol.getNumAtoms(), false);
+    seen[ring_atom] = true;
+    std::vector<unsigned> front{first};
+    seen[first] = true;
+    while (!front.empty()) {
+        const unsigned at = front.back();
+        front.pop_back();
+        atoms.push_back(static_cast<int>(at));
+        for (const auto* next : mol.atomNeighbors(mol.getAtomWithIdx(at))) {
+            const unsigned index = next->getIdx();
+            if (index == ring_atom && at != first) return {};
+            if (seen[index]) continue;
+            seen[index] = true;
+            front.push_back(index);
+        }
+    }
+    std::vector<std::string> symbols(mol.getNumAtoms());
+    for (const auto* atom : mol.atoms()) {
+        auto& symbol = symbols[atom->getIdx()];
+        if (atom->getIdx() == ring_atom) symbol = "*";
+        else symbol = RDKit::SmilesWrite::GetAtomSmiles(atom, false, nullptr, false, false);
+    }
+    return RDKit::MolFragmentToSmiles(mol, atoms, nullptr, &symbols, nullptr, false);
+}
+
+}  // namespace toolkit
+
+GroupIndex index_groups(const Tables& tables) {
+    GroupIndex index;
+    for (std::size_t i = 0; i < tables.substituents.size(); ++i) {
+        const auto& group = tables.substituents[i];
+        const std::string where = "substituents.csv:" + group.id;
+        if (group.smiles.empty()) {
+            const std::unique_ptr<RDKit::RWMol> pattern(RDKit::SmartsToMol(group.smarts));
+            if (!pattern) throw Error(ErrorKind::tables, where + ":smarts", "the pattern can't be read");
+            index.generic.push_back(static_cast<int>(i));
+            continue;
+        }
+        try {
+            const auto mol = toolkit::read_smiles(toolkit::on_benzene(group.smiles));
+            index.exact.emplace(toolkit::group_key(*mol, 5, 6), static_cast<int>(i));
+        } catch (const Error& e) {
+            throw Error(ErrorKind::tables, where + ":smiles", e.what());
+        }
+    }
+    std::stable_sort(index.generic.begin(), index.generic.end(), [&](int a, int b) {
+        const auto& left = tables.substituents[static_cast<std::size_t>(a)];
+        const auto& right = tables.substituents[static_cast<std::size_t>(b)];
+        return std::tie(left.rank, left.id) < std::tie(right.rank, right.id);
+    });
+    return index;
+}
+
+std::string ring_smiles(const Tables& tables, const RingGroups& groups) {
+    std::string smiles;
+    for (std::size_t i = 0; i < 6; ++i) {
+        smiles += 'c';
+        if (i == 0 || i == 5) smiles += "%99";
+        if (groups[i] < 0) continue;
+        const auto& group = tables.substituents[static_cast<std::size_t>(groups[i])];
+        if (group.smiles.empty()) return {};
+        smiles += "(" + group.smiles.substr(1) + ")";
+    }
+    return canonical_smiles(smiles, "ring");
+}
+
+std::string canonical_smiles(std::string_view smiles, const std::string& where) {
+    try {
+        return RDKit::MolToSmiles(*toolkit::read_smiles(smiles));
+    } catch (const Error& e) {
+        throw Error(ErrorKind::tables, where, fmt::format("{}: {}", e.where, e.what()));
+    }
+}
+
+namespace {
+
+int count(const RDKit::ROMol& mol, const std::string& smarts, const std::string& where) {
+    const std::unique_ptr<RDKit::RWMol> pattern(RDKit::SmartsToMol(smarts));
+    if (!pattern) throw Error(ErrorKind::tables, where, "the pattern can't be read: " + smarts);
+    return static_cast<int>(RDKit::SubstructMatch(mol, *pattern).size());
+}
+
+}  // namespace
+
+bool matches(const Arene& arene, const std::string& smarts, const std::string& where) {
+    return count(arene.molecule->mol, smarts, where) > 0;
+}
+
+bool matches(std::string_view smiles, const std::string& smarts, const std::string& where) {
+    return count_matches(smiles, smarts, where) > 0;
+}
+
+int count_matches(std::string_view smiles, const std::string& smarts, const std::string& where) {
+    return count(*toolkit::read_smiles(smiles), smarts, where);
+}
+
+}  // namespace isotally

@@ -1,0 +1,263 @@
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+
+#include "fit.hpp"
+#include "terms.hpp"
+
+namespace isotally {
+namespace {
+
+using factors::Settings;
+
+/// Numbers that turn printed percentages into log-ratios with noise (model.csv).
+struct Noise {
+    double points, log10, weak, bound_fraction, bound_sd, unlisted_percent, stray_percent, stray_sd;
+};
+
+Noise read_noise(const Tables& tables, std::string_view family) {
+    const auto value = [&](const char* quantity) { return model_figure(tables, family, quantity).value; };
+    return {value("laboratory_sd_points"), value("laboratory_sd_log10"), value("weak_widening"),
+            value("bound_fraction"),       value("bound_sd"),            value("unlisted_percent"),
+            value("stray_percent"),        value("stray_sd")};
+}
+
+struct Placed {
+    Arene arene;
+    std::vector<Site> sites;
+};
+
+Placed place(const Knowledge& knowledge, const std::string& substrate, const Reaction& reaction, const std::string& where) {
+    auto arene = [&] {
+        try {
+            return parse_arene(knowledge.tables, knowledge.groups, substrate);
+        } catch (const Error& e) {
+            throw Error(ErrorKind::tables, where + ":substrate", fmt::format("{}: {}", e.where, e.what()));
+        }
+    }();
+    if (const auto* refused = refusal(arene))
+        throw Error(ErrorKind::tables, where + ":substrate", fmt::format("{}: {}", substrate, refused->reason));
+    Placed placed{std::get<Arene>(std::move(arene)), {}};
+    placed.sites = sites(placed.arene, reaction.new_group);
+    return placed;
+}
+
+/// log10 of a share per position, with the sd that a laboratory's scatter gives it.
+struct LogShare {
+    double value, sd;
+};
+
+LogShare log_share(double percent, double sd_points, int multiplicity, double widening, const Noise& noise) {
+    const double points = std::hypot(sd_points, noise.points) * widening;
+    return {std::log10(percent / multiplicity), std::hypot(points / (percent * std::log(10.0)), noise.log10 * widening)};
+}
+
+/// A small share that a donor does not lead to (odd positions from it) may come from another species, protonated
+/// or coordinated: an upper bound of what the neutral ring gives.
+bool is_stray(const Tables& tables, const PlacedSite& site, double percent, const Noise& noise) {
+    if (percent > noise.stray_percent) return false;
+    bool donor = false, led = false;
+    for (int p = 0; p < 6; ++p) {
+        const int group = site.groups[static_cast<std::size_t>(p)];
+        if (group < 0 || tables.substituents[static_cast<std::size_t>(group)].kind != "donor") continue;
+        donor = true;
+        led |= (p - site.position) % 2 != 0;
+    }
+    return donor && !led;
+}
+
+/// Log-ratios of the listed isomers to the largest; isomers that were not listed enter as bounds where the
+/// record claims to be complete, or where it names a product that must be nearly all.
+void add_share_rows(const Tables& tables, const Measurement& record, const std::vector<Site>& sites, const Noise& noise,
+                    Observation& out) {
+    const double widening = record.use == "weak" || record.from.confidence == "low" ? noise.weak : 1;
+    std::vector<double> percent(sites.size(), 0), sd(sites.size(), 0);
+    for (const auto& product : record.products) {
+        const auto site = std::find_if(sites.begin(), sites.end(), [&](const Site& s) { return s.product == product.smiles; });
+        percent[static_cast<std::size_t>(site - sites.begin())] += product.percent;
+        sd[static_cast<std::size_t>(site - sites.begin())] = product.sd.value_or(0);
+    }
+    const auto top = static_cast<std::size_t>(std::max_element(percent.begin(), percent.end()) - percent.begin());
+    if (percent[top] <= 0) return;
+    const auto reference = log_share(percent[top], sd[top], sites[top].multiplicity, widening, noise);
+    const auto row = [&](std::size_t site, double value, double row_sd, bool bound) {
+        out.rows.push_back({{{static_cast<int>(site), 1.0}, {static_cast<int>(top), -1.0}}, value, row_sd, bound});
+    };
+    out.shared_sd = reference.sd;
+    const bool only_named = record.use == "bound";
+    double rest = 0;  // percent left for the isomers that are not listed
+    int unlisted = 0;
+    for (std::size_t i = 0; i < sites.size(); ++i) unlisted += percent[i] > 0 ? 0 : sites[i].multiplicity;
+    if (only_named) rest = std::max(noise.unlisted_percent, 100 - std::min(percent[top], 95.0));
+    for (std::size_t i = 0; i < sites.size(); ++i) {
+        if (i == top) continue;
+        if (percent[i] > 0 && !only_named) {
+            const auto share = log_share(percent[i], sd[i], sites[i].multiplicity, widening, noise);
+            const bool stray = is_stray(tables, out.sites[i], percent[i], noise);
+            row(i, share.value - reference.value, stray ? std::hypot(share.sd, noise.stray_sd) : share.sd, stray);
+        } else if (only_named) {
+            row(i, std::log10(noise.bound_fraction * rest / unlisted) - reference.value, noise.bound_sd, true);
+        } else if (record.complete) {
+            row(i, std::log10(noise.bound_fraction * noise.unlisted_percent / sites[i].multiplicity) - reference.value,
+                noise.bound_sd, true);
+        }
+    }
+}
+
+Conditions conditions_of(const Tables& tables, int reaction, std::optional<double> temperature_C,
+                         std::optional<double> acid_percent) {
+    const auto& figures = tables.reactions[static_cast<std::size_t>(reaction)].figures;
+    const auto standard = [&](const char* quantity, double otherwise) {
+        const auto found = figures.find(quantity);
+        return found == figures.end() ? otherwise : found->second.value;
+    };
+    return {reaction, temperature_C.value_or(standard("temperature_default_C", 25)),
+            acid_percent.value_or(standard("acid_default_percent", 0))};
+}
+
+Observation start(const Placed& placed, const std::string& id, const Conditions& conditions, const Provenance& from) {
+    Observation out;
+    out.id = id;
+    out.compound = placed.arene.smiles;
+    out.source = from.source;
+    out.status = from.status;
+    out.confidence = from.confidence;
+    out.conditions = conditions;
+    out.sites = placed_sites(placed.arene, placed.sites);
+    return out;
+}
+
+void add_measurements(Knowledge& knowledge) {
+    auto& tables = knowledge.tables;
+    for (auto& record : tables.measurements) {
+        const std::string where = "measurements.json:" + record.id;
+        const int reaction = find_reaction(tables, record.reaction);
+        const auto& row = tables.reactions[static_cast<std::size_t>(reaction)];
+        const auto placed = place(knowledge, record.substrate, row, where);
+        record.substrate = placed.arene.smiles;
+        for (auto& product : record.products) {
+            product.smiles = canonical_smiles(product.smiles, where + ":products");
+            if (std::none_of(placed.sites.begin(), placed.sites.end(), [&](const Site& s) { return s.product == product.smiles; }))
+                throw Error(ErrorKind::tables, where + ":products",
+                            fmt::format("{} is no product of {} in {}", product.smiles, record.substrate, row.id));
+        }
+        if (record.use == "no") continue;
+        auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
+        // what one lone isomer below "nearly all" leaves open can't be put as a ratio
+        if (!(record.products.size() == 1 && record.use != "bound" && placed.sites.size() > 1 && record.products[0].percent < 95))
+            add_share_rows(tables, record, placed.sites, read_noise(tables, row.family), out);
+        if (!out.rows.empty()) knowledge.observations.push_back(std::move(out));
+    }
+}
+
+/// Relation of the only group of a monosubstituted benzene to a site of it.
+Relation relation_to_group(const PlacedSite& site) {
+    for (int p = 0; p < 6; ++p)
+        if (site.groups[static_cast<std::size_t>(p)] >= 0) {
+            const int apart = std::min((p - site.position + 6) % 6, (site.position - p + 6) % 6);
+            return static_cast<Relation>(apart - 1);
+        }
+    return ortho;
+}
+
+void add_rates(Knowledge& knowledge) {
+    auto& tables = knowledge.tables;
+    for (auto& record : tables.rates) {
+        const std::string where = (record.relation.empty() ? "rates.csv:" : "factors.csv:") + record.id;
+        const int reaction = find_reaction(tables, record.reaction);
+        const auto& row = tables.reactions[static_cast<std::size_t>(reaction)];
+        const auto placed = place(knowledge, record.substrate, row, where);
+        record.substrate = placed.arene.smiles;
+        if (record.use == "no" || record.use == "bound") continue;
+        auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
+        const double sd = record.sd_log10 * (record.use == "weak" ? read_noise(tables, row.family).weak : 1);
+        ObservedRow observed{{}, std::log10(record.value), sd, false};
+        out.kind = record.relation.empty() ? Observation::Kind::rate : Observation::Kind::factor;
+        if (out.kind == Observation::Kind::factor) {
+            for (std::size_t i = 0; i < out.sites.size(); ++i)
+                if (record.relation == relation_names[relation_to_group(out.sites[i])])
+                    observed.weights = {{static_cast<int>(i), 1.0}};
+            if (observed.weights.empty()) throw Error(ErrorKind::tables, where + ":relation", "no such position on this ring");
+        }
+        out.rows.push_back(std::move(observed));
+        knowledge.observations.push_back(std::move(out));
+    }
+}
+
+/// Rule of the trade for the ortho and para factors of toluene and tert-butylbenzene in each reaction.
+void add_ortho_para_ratios(Knowledge& knowledge) {
+    auto& tables = knowledge.tables;
+    const std::pair<const char*, const char*> rows[] = {{"ortho_para_methyl", "Cc1ccccc1"},
+                                                        {"ortho_para_tert_butyl", "CC(C)(C)c1ccccc1"}};
+    for (std::size_t r = 0; r < tables.reactions.size(); ++r)
+        for (const auto& [quantity, substrate] : rows) {
+            const auto& reaction = tables.reactions[r];
+            const auto figure = reaction.figures.find(quantity);
+            if (figure == reaction.figures.end() || figure->second.value <= 0) continue;
+            const std::string where = fmt::format("{}:{}", reaction.id, quantity);
+            const auto placed = place(knowledge, substrate, reaction, where);
+            auto out = start(placed, where, conditions_of(tables, static_cast<int>(r), {}, {}), figure->second.from);
+            out.kind = Observation::Kind::rule;
+            ObservedRow observed{{}, std::log10(figure->second.value),
+                                 model_figure(tables, reaction.family, "ortho_para_rule_sd").value, true};
+            for (std::size_t i = 0; i < out.sites.size(); ++i) {
+                const auto relation = relation_to_group(out.sites[i]);
+                if (relation != meta) observed.weights.emplace_back(static_cast<int>(i), relation == ortho ? 1.0 : -1.0);
+            }
+            out.rows.push_back(std::move(observed));
+            knowledge.observations.push_back(std::move(out));
+        }
+}
+
+/// A rate is linearised with the shares the family predicts: log10 k = c + sum of share * log10 F.
+void linearise_rates(Knowledge& knowledge) {
+    std::vector<std::string> families;
+    for (const auto& reaction : knowledge.tables.reactions)
+        if (std::find(families.begin(), families.end(), reaction.family) == families.end()) families.push_back(reaction.family);
+    for (const auto& family : families) {
+        std::vector<bool> use(knowledge.observations.size());
+        for (std::size_t i = 0; i < use.size(); ++i) use[i] = knowledge.observations[i].kind != Observation::Kind::rate;
+        const auto model = factors::fit_rows(knowledge, family, use);
+        for (auto& observation : knowledge.observations) {
+            if (observation.kind != Observation::Kind::rate) continue;
+            if (knowledge.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)].family != family) continue;
+            const auto at = site_factors(*model, observation.conditions, observation.compound, observation.sites, false);
+            double total = 0;
+            for (std::size_t i = 0; i < at.mean.size(); ++i) total += observation.sites[i].multiplicity * std::pow(10.0, at.mean[i]);
+            double predicted = std::log10(total / 6), linear = 0;
+            auto& row = observation.rows.front();
+            row.weights.clear();
+            for (std::size_t i = 0; i < at.mean.size(); ++i) {
+                const double share = observation.sites[i].multiplicity * std::pow(10.0, at.mean[i]) / total;
+                row.weights.emplace_back(static_cast<int>(i), share);
+                linear += share * at.mean[i];
+            }
+            row.value -= predicted - linear;
+        }
+    }
+}
+
+}  // namespace
+
+std::vector<PlacedSite> placed_sites(const Arene& arene, const std::vector<Site>& sites) {
+    std::vector<PlacedSite> placed;
+    for (const auto& site : sites)
+        placed.push_back({arene.rings[static_cast<std::size_t>(site.ring)].groups, site.positions.front(),
+                          site.multiplicity, 6 * site.ring + site.positions.front()});
+    return placed;
+}
+
+Knowledge prepare(Tables tables) {
+    Knowledge knowledge;
+    knowledge.tables = std::move(tables);
+    knowledge.groups = index_groups(knowledge.tables);
+    for (auto& name : knowledge.tables.names) name.smiles = canonical_smiles(name.smiles, "names.csv:" + name.name);
+    add_measurements(knowledge);
+    add_rates(knowledge);
+    add_ortho_para_ratios(knowledge);
+    linearise_rates(knowledge);
+    return knowledge;
+}
+
+}  // namespace isotally

@@ -1,0 +1,173 @@
+#include "isotally/reactivity.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+#include <map>
+
+namespace isotally {
+namespace {
+
+const Reaction& reaction_of(const Tables& tables, const Conditions& conditions) {
+    return tables.reactions[static_cast<std::size_t>(conditions.reaction)];
+}
+
+std::optional<double> figure(const Reaction& reaction, const char* quantity) {
+    const auto found = reaction.figures.find(quantity);
+    if (found == reaction.figures.end()) return std::nullopt;
+    return found->second.value;
+}
+
+bool applies(const std::vector<std::string>& reactions, const Reaction& reaction) {
+    return std::any_of(reactions.begin(), reactions.end(), [&](const std::string& word) {
+        return word == "*" || word == reaction.id || word == reaction.family;
+    });
+}
+
+constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-])]-[#6]";
+constexpr const char* ring_nitro = "c[$([NX3](=O)=O),$([NX3+](=O)[O-])]";
+/// A sulfo group ortho or para to a hydroxyl or amino group is displaced by nitro, so it counts as one.
+constexpr const char* displaceable_sulfo = "[$([OX2H]),$([NX3;H2,H1;!$(NC=O);!$(NS=O)])]c:[$(c),$(c:c:c)]S(=O)(=O)[OX2H,OX1-]";
+constexpr int most_nitro = 2;
+
+}  // namespace
+
+Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optional<double> temperature_C,
+                                     std::optional<double> acid_percent) {
+    const auto& reaction = tables.reactions[static_cast<std::size_t>(index)];
+    if (acid_percent && !reaction.has_acid)
+        throw Error(ErrorKind::usage, "option --acid-percent",
+                    fmt::format("{} has no sulfuric acid whose strength could be given", reaction.id));
+    Conditions chosen{index, temperature_C.value_or(figure(reaction, "temperature_default_C").value_or(25)), 0};
+    if (reaction.has_acid) chosen.acid_percent = acid_percent.value_or(figure(reaction, "acid_default_percent").value_or(0));
+    const auto outside = [&](double value, const char* low, const char* high) {
+        return value < figure(reaction, low).value_or(-1e9) || value > figure(reaction, high).value_or(1e9);
+    };
+    const bool enthalpic = model_figure(tables, reaction.family, "enthalpic").value != 0;
+    const char* low = enthalpic ? "temperature_min_C" : "temperature_series_min_C";
+    const char* high = enthalpic ? "temperature_max_C" : "temperature_series_max_C";
+    if (!figure(reaction, low)) low = "temperature_min_C", high = "temperature_max_C";
+    if (outside(chosen.temperature_C, low, high))
+        return Refusal{reaction.id, fmt::format("{:g} C lies outside what is known of {} ({:g} to {:g} C); ask inside that "
+                                                "range, or measure",
+                                                chosen.temperature_C, reaction.name, *figure(reaction, low),
+                                                *figure(reaction, high))};
+    if (reaction.has_acid && outside(chosen.acid_percent, "acid_min_percent", "acid_max_percent")) {
+        std::string other;
+        for (const auto& candidate : tables.reactions)
+            if (candidate.family == reaction.family && candidate.has_acid && candidate.id != reaction.id &&
+                chosen.acid_percent >= figure(candidate, "acid_min_percent").value_or(1e9) &&
+                chosen.acid_percent <= figure(candidate, "acid_max_percent").value_or(-1e9))
+                other = "; that is " + candidate.id;
+        return Refusal{reaction.id, fmt::format("{:g} % sulfuric acid lies outside {} ({:g} to {:g} %){}",
+                                                chosen.acid_percent, reaction.name, *figure(reaction, "acid_min_percent"),
+                                                *figure(reaction, "acid_max_percent"), other)};
+    }
+    return chosen;
+}
+
+std::optional<Refusal> decline_molecule(const Tables& tables, std::string_view smiles) {
+    const int groups = count_matches(smiles, nitro, "nitro");
+    if (groups > most_nitro)
+        return Refusal{"molecule", fmt::format("{} nitro groups in one molecule: isotally declines more than two, whatever "
+                                               "the purpose",
+                                               groups)};
+    if (groups == 0) return std::nullopt;
+    for (const auto& ban : tables.bans)
+        if (ban.id.starts_with("energetic-") && matches(smiles, ban.smarts, "bans.csv:" + ban.id))
+            return Refusal{"molecule", fmt::format("nitro together with another energetic group ({}): isotally declines", ban.reason)};
+    return std::nullopt;
+}
+
+std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, const Conditions& conditions,
+                                      const std::vector<Site>& sites) {
+    const auto& reaction = reaction_of(tables, conditions);
+    if (auto declined = decline_molecule(tables, arene.smiles)) return declined;
+    if (matches("c1ccccc1" + reaction.new_group.substr(1), ring_nitro, "nitro")) {
+        const int nitro_like = count_matches(arene.smiles, nitro, "nitro") + count_matches(arene.smiles, displaceable_sulfo, "sulfo");
+        if (nitro_like + 1 > most_nitro)
+            return Refusal{reaction.id, fmt::format("{} would bring a third nitro group{}: isotally declines more than two",
+                                                    reaction.name,
+                                                    nitro_like > count_matches(arene.smiles, nitro, "nitro")
+                                                        ? " (a sulfo group on a phenol or aniline is displaced and counts as one)"
+                                                        : "")};
+    }
+    for (const auto& ban : tables.bans) {
+        if (ban.id.starts_with("energetic-") || !applies(ban.reactions, reaction)) continue;
+        const std::string where = "bans.csv:" + ban.id;
+        if (!matches(arene, ban.smarts, where)) continue;
+        if (!ban.unless.empty() && matches(arene, ban.unless, where)) continue;
+        return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {} instead", reaction.name, ban.reason, ban.instead)};
+    }
+    for (const auto& site : sites)
+        if (auto declined = decline_molecule(tables, site.product)) return declined;
+    return std::nullopt;
+}
+
+std::optional<Refusal> refuse_below_floor(const Tables& tables, const Conditions& conditions,
+                                          const std::vector<double>& log10_factors) {
+    const auto& reaction = reaction_of(tables, conditions);
+    const auto floor = figure(reaction, "floor");
+    if (!floor) return std::nullopt;
+    const double best = *std::max_element(log10_factors.begin(), log10_factors.end());
+    if (best >= std::log10(*floor)) return std::nullopt;
+    return Refusal{reaction.id,
+                   fmt::format("{} does not go on this ring: its best position has about 10^{:.1f} of the reactivity of a "
+                               "position of benzene, the reaction needs 10^{:.1f}{}{}",
+                               reaction.name, best, std::log10(*floor), reaction.instead.empty() ? "" : "; people ",
+                               reaction.instead.empty() ? "" : reaction.instead + " instead")};
+}
+
+std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene, const Conditions& conditions,
+                                         const std::vector<Site>& sites) {
+    const auto& reaction = reaction_of(tables, conditions);
+    std::vector<std::pair<int, ProductCaution>> found;
+    for (const auto& caution : tables.cautions) {
+        if (!applies(caution.reactions, reaction)) continue;
+        const std::string where = "cautions.csv:" + caution.code;
+        if (!caution.substrate_smarts.empty() && !matches(arene, caution.substrate_smarts, where)) continue;
+        ProductCaution said{caution.code, caution.text, {}};
+        if (!caution.product_smarts.empty()) {
+            for (const auto& site : sites)
+                if (matches(site.product, caution.product_smarts, where)) said.products.push_back(site.product);
+            if (said.products.empty()) continue;
+            if (said.products.size() == sites.size()) said.products.clear();
+        }
+        found.emplace_back(caution.severity, std::move(said));
+    }
+    std::stable_sort(found.begin(), found.end(), [](const auto& a, const auto& b) { return a.first > b.first; });
+    std::vector<ProductCaution> cautions;
+    for (auto& entry : found) cautions.push_back(std::move(entry.second));
+    return cautions;
+}
+
+std::vector<std::string> reaction_notes(const Tables& tables, const Arene& arene, const Conditions& conditions, double relative_rate) {
+    const auto& reaction = reaction_of(tables, conditions);
+    std::vector<std::string> notes = arene.notes;
+    for (const auto& ring : arene.rings) {
+        const auto changed = in_state(tables, conditions, ring.groups);
+        for (std::size_t i = 0; i < 6; ++i) {
+            if (changed[i] == ring.groups[i] || changed[i] < 0) continue;
+            const auto& fed = tables.substituents[static_cast<std::size_t>(ring.groups[i])];
+            const auto& state = tables.substituents[static_cast<std::size_t>(changed[i])];
+            std::string note = fmt::format("{} reacts as {} in this medium", fed.name, state.name);
+            for (const auto& row : tables.states)
+                if (row.reaction == reaction.id && row.state == state.id && row.both_forms != "no") {
+                    note += "; a trace of the free form reacts too and shifts the shares";
+                    break;
+                }
+            if (std::find(notes.begin(), notes.end(), note) == notes.end()) notes.push_back(note);
+        }
+    }
+    if (!reaction.note.empty()) notes.push_back(reaction.note);
+    if (const auto limit = figure(reaction, "encounter_limit"); limit && relative_rate > *limit)
+        notes.push_back(fmt::format("the rate is limited by encounter to about {:g} times benzene in this medium; the shares are not",
+                                    *limit));
+    if (const auto reach = figure(reaction, "reach"); reach && relative_rate < *reach)
+        notes.push_back(fmt::format("slower than these conditions usually convert (about {:g} of benzene): run stronger, hotter or longer",
+                                    *reach));
+    return notes;
+}
+
+}  // namespace isotally
