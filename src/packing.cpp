@@ -17,7 +17,7 @@ namespace isotally {
 
 template <class Archive>
 void serialize(Archive& ar, Provenance& x) {
-    ar(x.source, x.locator, x.status, x.confidence, x.note);
+    ar(x.source, x.locator, x.status, x.confidence, x.note, x.line);
 }
 template <class Archive>
 void serialize(Archive& ar, Figure& x) {
@@ -25,7 +25,7 @@ void serialize(Archive& ar, Figure& x) {
 }
 template <class Archive>
 void serialize(Archive& ar, Substituent& x) {
-    ar(x.id, x.name, x.smiles, x.smarts, x.rank, x.like, x.kind, x.prefix, x.principal, x.constants);
+    ar(x.id, x.name, x.smiles, x.smarts, x.rank, x.like, x.kind, x.prefix, x.principal, x.constants, x.line);
 }
 template <class Archive>
 void serialize(Archive& ar, Constant& x) {
@@ -99,12 +99,16 @@ void serialize(Archive& ar, Observation& x) {
     ar(x.id, x.compound, x.source, x.status, x.confidence, x.conditions, x.sites, x.rows, x.shared_sd, x.kind);
 }
 template <class Archive>
+void serialize(Archive& ar, GroupState& x) {
+    ar(x.reaction, x.group, x.state, x.acid_from, x.acid_to, x.both_forms);
+}
+template <class Archive>
 void serialize(Archive& ar, GroupIndex& x) {
     ar(x.exact, x.generic);
 }
 template <class Archive>
 void serialize(Archive& ar, Knowledge& x) {
-    ar(x.tables, x.groups, x.observations);
+    ar(x.tables, x.groups, x.states, x.observations);
 }
 
 namespace {

@@ -142,24 +142,19 @@ std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& aren
     return cautions;
 }
 
-std::vector<std::string> reaction_notes(const Tables& tables, const Arene& arene, const Conditions& conditions, double relative_rate) {
+std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene, const Conditions& conditions, double relative_rate) {
+    const auto& tables = knowledge.tables;
     const auto& reaction = reaction_of(tables, conditions);
     std::vector<std::string> notes = arene.notes;
-    for (const auto& ring : arene.rings) {
-        const auto changed = in_state(tables, conditions, ring.groups);
-        for (std::size_t i = 0; i < 6; ++i) {
-            if (changed[i] == ring.groups[i] || changed[i] < 0) continue;
-            const auto& fed = tables.substituents[static_cast<std::size_t>(ring.groups[i])];
-            const auto& state = tables.substituents[static_cast<std::size_t>(changed[i])];
-            std::string note = fmt::format("{} reacts as {} in this medium", fed.name, state.name);
-            for (const auto& row : tables.states)
-                if (row.reaction == reaction.id && row.state == state.id && row.both_forms != "no") {
-                    note += "; a trace of the free form reacts too and shifts the shares";
-                    break;
-                }
+    for (const auto& ring : arene.rings)
+        for (const int group : ring.groups) {
+            const auto* state = group < 0 ? nullptr : state_of(knowledge, conditions, group);
+            if (!state || state->state == group) continue;
+            const auto note = fmt::format("{} reacts as {} in this medium{}", tables.substituents[static_cast<std::size_t>(group)].name,
+                                          tables.substituents[static_cast<std::size_t>(state->state)].name,
+                                          state->both_forms ? "; a trace of the free form reacts too and shifts the shares" : "");
             if (std::find(notes.begin(), notes.end(), note) == notes.end()) notes.push_back(note);
         }
-    }
     if (!reaction.note.empty()) notes.push_back(reaction.note);
     if (const auto limit = figure(reaction, "encounter_limit"); limit && relative_rate > *limit)
         notes.push_back(fmt::format("the rate is limited by encounter to about {:g} times benzene in this medium; the shares are not",

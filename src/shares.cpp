@@ -185,7 +185,7 @@ Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& mo
     answer.relative_rate = drawn.relative_rate;
     answer.measured_by = std::move(factors.measured_by);
     answer.cautions = cautions_for(tables, arene, conditions, found);
-    answer.notes = reaction_notes(tables, arene, conditions, drawn.relative_rate.value);
+    answer.notes = reaction_notes(knowledge, arene, conditions, drawn.relative_rate.value);
     return answer;
 }
 

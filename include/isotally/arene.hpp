@@ -67,6 +67,9 @@ std::vector<Site> sites(const Arene& arene, std::string_view new_group);
 bool matches(const Arene& arene, const std::string& smarts, const std::string& where);
 bool matches(std::string_view smiles, const std::string& smarts, const std::string& where);
 
+/// Throws Error{tables} where a SMARTS pattern can't be read.
+void check_pattern(const std::string& smarts, const std::string& where);
+
 /// How often it occurs.
 int count_matches(std::string_view smiles, const std::string& smarts, const std::string& where);
 

@@ -49,10 +49,18 @@ struct Observation {
     enum class Kind { shares, factor, rate, rule } kind = Kind::shares;
 };
 
+/// A row of states.csv, resolved: in this reaction, between these acid strengths, a group reacts as another.
+struct GroupState {
+    int reaction = 0, group = 0, state = 0;
+    double acid_from = 0, acid_to = 0;  // both 0: any
+    bool both_forms = false;            // a trace of the group as fed reacts too
+};
+
 /// Everything a question needs: tables with canonical molecules, groups, resolved observations.
 struct Knowledge {
     Tables tables;
     GroupIndex groups;
+    std::vector<GroupState> states;     // by reaction, then group
     std::vector<Observation> observations;
 };
 
@@ -60,8 +68,14 @@ struct Knowledge {
 /// a product is no isomer of its substrate.
 Knowledge prepare(Tables tables);
 
+/// Every such fault of the tables, each with file, line and field.
+std::vector<Fault> lint_chemistry(const Tables& tables);
+
 /// What the medium makes of the groups of a ring (ammonium, complexed carbonyl ...).
-RingGroups in_state(const Tables& tables, const Conditions& conditions, const RingGroups& groups);
+RingGroups in_state(const Knowledge& knowledge, const Conditions& conditions, const RingGroups& groups);
+
+/// The state of one group, or none where the medium leaves it as it is.
+const GroupState* state_of(const Knowledge& knowledge, const Conditions& conditions, int group);
 
 /// The linear Gaussian model of one reaction family, fitted to its observations.
 ///
@@ -98,6 +112,9 @@ struct SiteFactors {
     std::vector<std::vector<Correction>> corrections;
     std::vector<std::string> measured_by;  // ids of the isomer distributions of this very compound in this family
 };
+
+/// How many groups of the tables have each kind of evidence in each family: "nitration, measured" ...
+std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge& knowledge);
 
 /// Posterior of the sites of a compound (canonical SMILES; for its own deviation). With `explain`, the
 /// contributions and corrections too; they sum to `mean`.

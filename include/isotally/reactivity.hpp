@@ -38,7 +38,7 @@ std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& aren
                                          const std::vector<Site>& sites);
 
 /// What must be said with the figures: reversible, two forms of a group react, slower than the acid reaches ...
-std::vector<std::string> reaction_notes(const Tables& tables, const Arene& arene, const Conditions& conditions,
+std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene, const Conditions& conditions,
                                         double relative_rate);
 
 }  // namespace isotally

@@ -16,11 +16,12 @@ namespace isotally {
 
 /// Where a figure comes from. `status` is seen, memory, practice, derived or invented.
 struct Provenance {
-    std::string source;      // id in sources.json; empty only for status practice
+    std::string source;      // id in sources.json; empty only for status practice and derived
     std::string locator;     // page, table, row; for derived: the command
     std::string status;
     std::string confidence;  // high, medium, low or empty
     std::string note;
+    std::size_t line = 0;    // on which the record begins in its file
 };
 
 struct Figure {
@@ -38,9 +39,10 @@ struct Substituent {
     int rank = 0;           // generic classes: the lowest rank that matches wins, ties by id
     std::string like;       // id of the group whose constants stand in where its own are missing
     std::string kind;       // alkyl, halogen, donor, acceptor, cation, benzylic, aryl, alkenyl, silyl
-    std::string prefix;     // nomenclature: "nitro", "(trifluoromethyl)", "propan-2-yl"; empty: none
+    std::string prefix;     // nomenclature: "nitro", "trifluoromethyl", "propan-2-yl"; empty: none
     std::string principal;  // nomenclature: characteristic group (see names.hpp); empty: prefix only
     std::map<std::string, Figure> constants;  // by quantity, the row with use yes
+    std::size_t line = 0;
 };
 
 /// A row of constants.csv: sigma_m, sigma_p, sigma_m_plus, sigma_p_plus, charton_nu.

@@ -47,10 +47,9 @@ GroupIndex index_groups(const Tables& tables) {
     GroupIndex index;
     for (std::size_t i = 0; i < tables.substituents.size(); ++i) {
         const auto& group = tables.substituents[i];
-        const std::string where = "substituents.csv:" + group.id;
+        const std::string where = fmt::format("substituents.csv:{}", group.line);
         if (group.smiles.empty()) {
-            const std::unique_ptr<RDKit::RWMol> pattern(RDKit::SmartsToMol(group.smarts));
-            if (!pattern) throw Error(ErrorKind::tables, where + ":smarts", "the pattern can't be read");
+            check_pattern(group.smarts, where + ":smarts");
             index.generic.push_back(static_cast<int>(i));
             continue;
         }
@@ -92,13 +91,25 @@ std::string canonical_smiles(std::string_view smiles, const std::string& where) 
 
 namespace {
 
-int count(const RDKit::ROMol& mol, const std::string& smarts, const std::string& where) {
-    const std::unique_ptr<RDKit::RWMol> pattern(RDKit::SmartsToMol(smarts));
+std::unique_ptr<RDKit::RWMol> read_pattern(const std::string& smarts, const std::string& where) {
+    std::unique_ptr<RDKit::RWMol> pattern;
+    try {
+        pattern.reset(RDKit::SmartsToMol(smarts));
+    } catch (const std::exception&) {
+    }
     if (!pattern) throw Error(ErrorKind::tables, where, "the pattern can't be read: " + smarts);
-    return static_cast<int>(RDKit::SubstructMatch(mol, *pattern).size());
+    return pattern;
+}
+
+int count(const RDKit::ROMol& mol, const std::string& smarts, const std::string& where) {
+    return static_cast<int>(RDKit::SubstructMatch(mol, *read_pattern(smarts, where)).size());
 }
 
 }  // namespace
+
+void check_pattern(const std::string& smarts, const std::string& where) {
+    read_pattern(smarts, where);
+}
 
 bool matches(const Arene& arene, const std::string& smarts, const std::string& where) {
     return count(arene.molecule->mol, smarts, where) > 0;

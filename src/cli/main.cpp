@@ -110,9 +110,11 @@ int run(int argc, char** argv, std::ostream& out) {
         throw usage_error(e);
     }
     if (program.got_subcommand("step")) return cli::step_command(options.step, load(options), std::cin, out, std::cerr);
+    options.tables.chemistry_faults = lint_chemistry;
+    options.tables.evidence_counts = [](const Tables& tables) { return count_evidence(prepare(tables)); };
     const auto files = options.tables_folder.empty() ? built_in_files() : read_table_folder(options.tables_folder);
-    return tables_command(options.tables, options.tables_folder.empty() ? built_in_knowledge().tables : parse_tables(files), files,
-                          out, std::cerr);
+    const bool as_they_are = options.tables.lint || !options.tables.export_folder.empty();
+    return tables_command(options.tables, as_they_are ? Tables{} : parse_tables(files), files, out, std::cerr);
 }
 
 }  // namespace

@@ -28,6 +28,7 @@ struct Fit {
     Eigen::LLT<Eigen::MatrixXd> factor;  // of S = H P H' + R
     std::vector<const Observation*> observations;
     std::vector<std::size_t> observation_of_row;
+    std::map<int, std::vector<std::pair<const Observation*, int>>> carriers;  // of a group: record, groups on its ring
 };
 
 struct FamilyModel {
@@ -57,11 +58,22 @@ Form row_form(const Settings& settings, const Observation& observation, const Ob
     return form;
 }
 
+/// Groups that the record tells something of (bounds and rules of the trade are no measurement).
+void note_carriers(Fit& fit, const Observation& observation) {
+    const bool measured = std::any_of(observation.rows.begin(), observation.rows.end(), [](const ObservedRow& row) { return !row.bound; });
+    if (!measured) return;
+    auto groups = in_state(*fit.settings.knowledge, observation.conditions, observation.sites.front().groups);
+    const int carried = static_cast<int>(6 - std::count(groups.begin(), groups.end(), -1));
+    std::sort(groups.begin(), groups.end());
+    for (const auto* group = groups.begin(); group != groups.end(); ++group)
+        if (*group >= 0 && (group == groups.begin() || *group != *(group - 1))) fit.carriers[*group].emplace_back(&observation, carried);
+}
+
 }  // namespace
 
 std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::string_view family, const std::vector<bool>& use) {
     auto model = std::make_shared<Fit>();
-    model->settings = read_settings(knowledge.tables, family);
+    model->settings = read_settings(knowledge, family);
     std::vector<double> residual;
     std::vector<std::pair<int, double>> shared;  // first row of each record with its common sd
     std::vector<double> own;
@@ -72,6 +84,7 @@ std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::str
         const int compound =
             model->compounds.emplace(observation.compound, static_cast<int>(model->compounds.size())).first->second;
         model->observations.push_back(&observation);
+        note_carriers(*model, observation);
         for (const auto& row : observation.rows) {
             const int at = static_cast<int>(own.size());
             const auto form = row_form(model->settings, observation, row, compound);
@@ -182,38 +195,36 @@ Posterior posterior(const FamilyModel& model, const std::vector<Form>& forms) {
     return out;
 }
 
-double sd_of(double variance) {
-    return std::sqrt(std::max(variance, 0.0));
-}
-
 /// Who says so: measured on the monosubstituted ring, inferred from others that carry the group,
 /// correlated by its own constants, assumed by another group's.
-void tell_evidence(const FamilyModel& model, Contribution& contribution) {
+void tell_evidence(const Fit& fit, Contribution& contribution, std::string_view left_out) {
     bool mono = false, poly = false;
-    for (const auto* observation : model.fit->observations) {
-        bool used = false;
-        if (observation->compound == model.left_out) continue;
-        for (const auto& row : observation->rows) used |= !row.bound;
-        if (!used) continue;
-        const auto groups = in_state(*model.fit->settings.tables, observation->conditions, observation->sites.front().groups);
-        const auto carried = std::count_if(groups.begin(), groups.end(), [](int g) { return g >= 0; });
-        if (std::find(groups.begin(), groups.end(), contribution.substituent) == groups.end()) continue;
-        (carried == 1 ? mono : poly) = true;
-        auto& sources = contribution.sources;
-        if (carried == 1 && !observation->source.empty() && std::find(sources.begin(), sources.end(), observation->source) == sources.end())
-            sources.push_back(observation->source);
-    }
-    const auto& constants = factors::group_constants(model.fit->settings, contribution.substituent);
+    const auto found = fit.carriers.find(contribution.substituent);
+    if (found != fit.carriers.end())
+        for (const auto& [observation, carried] : found->second) {
+            if (observation->compound == left_out) continue;
+            (carried == 1 ? mono : poly) = true;
+            auto& sources = contribution.sources;
+            if (carried == 1 && !observation->source.empty() &&
+                std::find(sources.begin(), sources.end(), observation->source) == sources.end())
+                sources.push_back(observation->source);
+        }
+    const auto& constants = factors::group_constants(fit.settings, contribution.substituent);
     contribution.evidence = mono ? "measured" : poly ? "inferred" : constants.assumed ? "assumed" : "correlated";
     if (!mono) contribution.sources = {contribution.relation == meta ? constants.source_meta : constants.source_para};
     std::erase(contribution.sources, "");
 }
 
+double sd_of(double variance) {
+    return std::sqrt(std::max(variance, 0.0));
+}
+
 void explain_sites(const FamilyModel& model, const Conditions& conditions, int compound,
                    const std::vector<PlacedSite>& sites, SiteFactors& out) {
-    const auto& settings = model.fit->settings;
+    const auto& fit = *model.fit;
+    const auto& settings = fit.settings;
     for (const auto& site : sites) {
-        const auto groups = in_state(*settings.tables, conditions, site.groups);
+        const auto groups = in_state(*settings.knowledge, conditions, site.groups);
         std::vector<Form> forms;
         std::vector<Contribution> contributions;
         std::vector<Correction> corrections;
@@ -243,7 +254,7 @@ void explain_sites(const FamilyModel& model, const Conditions& conditions, int c
             if (i < contributions.size()) {
                 contributions[i].log10_factor = at.mean(k);
                 contributions[i].sd = sd;
-                tell_evidence(model, contributions[i]);
+                tell_evidence(fit, contributions[i], model.left_out);
             } else {
                 corrections[i - contributions.size()].log10_factor = at.mean(k);
                 corrections[i - contributions.size()].sd = sd;
@@ -272,6 +283,22 @@ SiteFactors site_factors(const FamilyModel& model, const Conditions& conditions,
             out.measured_by.push_back(observation->id);
     if (explain) explain_sites(model, conditions, index, sites, out);
     return out;
+}
+
+std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge& knowledge) {
+    std::map<std::string, std::size_t> counts;
+    std::vector<std::string> families;
+    for (const auto& reaction : knowledge.tables.reactions) {
+        if (std::find(families.begin(), families.end(), reaction.family) != families.end()) continue;
+        families.push_back(reaction.family);
+        const auto model = fit_family(knowledge, reaction.family);
+        for (std::size_t i = 0; i < knowledge.tables.substituents.size(); ++i) {
+            Contribution contribution{static_cast<int>(i), para, 0, 0, "", {}};
+            tell_evidence(*model->fit, contribution, "");
+            ++counts[reaction.family + ", " + contribution.evidence];
+        }
+    }
+    return {counts.begin(), counts.end()};
 }
 
 }  // namespace isotally

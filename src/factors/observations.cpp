@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "fit.hpp"
+#include "states.hpp"
 #include "terms.hpp"
 
 namespace isotally {
@@ -13,14 +14,14 @@ using factors::Settings;
 
 /// Numbers that turn printed percentages into log-ratios with noise (model.csv).
 struct Noise {
-    double points, log10, weak, bound_fraction, bound_sd, unlisted_percent, stray_percent, stray_sd;
+    double points, log10, minor, weak, bound_fraction, bound_sd, unlisted_percent, stray_percent, stray_sd;
 };
 
 Noise read_noise(const Tables& tables, std::string_view family) {
     const auto value = [&](const char* quantity) { return model_figure(tables, family, quantity).value; };
-    return {value("laboratory_sd_points"), value("laboratory_sd_log10"), value("weak_widening"),
-            value("bound_fraction"),       value("bound_sd"),            value("unlisted_percent"),
-            value("stray_percent"),        value("stray_sd")};
+    return {value("laboratory_sd_points"), value("laboratory_sd_log10"), value("laboratory_sd_minor_log10"),
+            value("weak_widening"),        value("bound_fraction"),      value("bound_sd"),
+            value("unlisted_percent"),     value("stray_percent"),       value("stray_sd")};
 }
 
 struct Placed {
@@ -49,8 +50,9 @@ struct LogShare {
 };
 
 LogShare log_share(double percent, double sd_points, int multiplicity, double widening, const Noise& noise) {
-    const double points = std::hypot(sd_points, noise.points) * widening;
-    return {std::log10(percent / multiplicity), std::hypot(points / (percent * std::log(10.0)), noise.log10 * widening)};
+    const double points = std::hypot(sd_points, noise.points);
+    const double sd = std::min(noise.minor, std::hypot(points / (percent * std::log(10.0)), noise.log10));
+    return {std::log10(percent / multiplicity), sd * widening};
 }
 
 /// A small share that a donor does not lead to (odd positions from it) may come from another species, protonated
@@ -128,27 +130,25 @@ Observation start(const Placed& placed, const std::string& id, const Conditions&
     return out;
 }
 
-void add_measurements(Knowledge& knowledge) {
-    auto& tables = knowledge.tables;
-    for (auto& record : tables.measurements) {
-        const std::string where = "measurements.json:" + record.id;
-        const int reaction = find_reaction(tables, record.reaction);
-        const auto& row = tables.reactions[static_cast<std::size_t>(reaction)];
-        const auto placed = place(knowledge, record.substrate, row, where);
-        record.substrate = placed.arene.smiles;
-        for (auto& product : record.products) {
-            product.smiles = canonical_smiles(product.smiles, where + ":products");
-            if (std::none_of(placed.sites.begin(), placed.sites.end(), [&](const Site& s) { return s.product == product.smiles; }))
-                throw Error(ErrorKind::tables, where + ":products",
-                            fmt::format("{} is no product of {} in {}", product.smiles, record.substrate, row.id));
-        }
-        if (record.use == "no") continue;
-        auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
-        // what one lone isomer below "nearly all" leaves open can't be put as a ratio
-        if (!(record.products.size() == 1 && record.use != "bound" && placed.sites.size() > 1 && record.products[0].percent < 95))
-            add_share_rows(tables, record, placed.sites, read_noise(tables, row.family), out);
-        if (!out.rows.empty()) knowledge.observations.push_back(std::move(out));
+void add_measurement(Knowledge& knowledge, Measurement& record) {
+    const auto& tables = knowledge.tables;
+    const std::string where = fmt::format("measurements.json:{}", record.from.line);
+    const int reaction = find_reaction(tables, record.reaction);
+    const auto& row = tables.reactions[static_cast<std::size_t>(reaction)];
+    const auto placed = place(knowledge, record.substrate, row, where);
+    record.substrate = placed.arene.smiles;
+    for (auto& product : record.products) {
+        product.smiles = canonical_smiles(product.smiles, where + ":products");
+        if (std::none_of(placed.sites.begin(), placed.sites.end(), [&](const Site& s) { return s.product == product.smiles; }))
+            throw Error(ErrorKind::tables, where + ":products",
+                        fmt::format("{} is no product of {} in {}", product.smiles, record.substrate, row.id));
     }
+    if (record.use == "no") return;
+    auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
+    // what one lone isomer below "nearly all" leaves open can't be put as a ratio
+    if (!(record.products.size() == 1 && record.use != "bound" && placed.sites.size() > 1 && record.products[0].percent < 95))
+        add_share_rows(tables, record, placed.sites, read_noise(tables, row.family), out);
+    if (!out.rows.empty()) knowledge.observations.push_back(std::move(out));
 }
 
 /// Relation of the only group of a monosubstituted benzene to a site of it.
@@ -161,28 +161,26 @@ Relation relation_to_group(const PlacedSite& site) {
     return ortho;
 }
 
-void add_rates(Knowledge& knowledge) {
-    auto& tables = knowledge.tables;
-    for (auto& record : tables.rates) {
-        const std::string where = (record.relation.empty() ? "rates.csv:" : "factors.csv:") + record.id;
-        const int reaction = find_reaction(tables, record.reaction);
-        const auto& row = tables.reactions[static_cast<std::size_t>(reaction)];
-        const auto placed = place(knowledge, record.substrate, row, where);
-        record.substrate = placed.arene.smiles;
-        if (record.use == "no" || record.use == "bound") continue;
-        auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
-        const double sd = record.sd_log10 * (record.use == "weak" ? read_noise(tables, row.family).weak : 1);
-        ObservedRow observed{{}, std::log10(record.value), sd, false};
-        out.kind = record.relation.empty() ? Observation::Kind::rate : Observation::Kind::factor;
-        if (out.kind == Observation::Kind::factor) {
-            for (std::size_t i = 0; i < out.sites.size(); ++i)
-                if (record.relation == relation_names[relation_to_group(out.sites[i])])
-                    observed.weights = {{static_cast<int>(i), 1.0}};
-            if (observed.weights.empty()) throw Error(ErrorKind::tables, where + ":relation", "no such position on this ring");
-        }
-        out.rows.push_back(std::move(observed));
-        knowledge.observations.push_back(std::move(out));
+void add_rate(Knowledge& knowledge, RateFigure& record) {
+    const auto& tables = knowledge.tables;
+    const std::string where = fmt::format("{}:{}", record.relation.empty() ? "rates.csv" : "factors.csv", record.from.line);
+    const int reaction = find_reaction(tables, record.reaction);
+    const auto& row = tables.reactions[static_cast<std::size_t>(reaction)];
+    const auto placed = place(knowledge, record.substrate, row, where);
+    record.substrate = placed.arene.smiles;
+    if (record.use == "no" || record.use == "bound") return;
+    auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
+    const double sd = record.sd_log10 * (record.use == "weak" ? read_noise(tables, row.family).weak : 1);
+    ObservedRow observed{{}, std::log10(record.value), sd, false};
+    out.kind = record.relation.empty() ? Observation::Kind::rate : Observation::Kind::factor;
+    if (out.kind == Observation::Kind::factor) {
+        for (std::size_t i = 0; i < out.sites.size(); ++i)
+            if (record.relation == relation_names[relation_to_group(out.sites[i])])
+                observed.weights = {{static_cast<int>(i), 1.0}};
+        if (observed.weights.empty()) throw Error(ErrorKind::tables, where + ":relation", "no such position on this ring");
     }
+    out.rows.push_back(std::move(observed));
+    knowledge.observations.push_back(std::move(out));
 }
 
 /// Rule of the trade for the ortho and para factors of toluene and tert-butylbenzene in each reaction.
@@ -248,16 +246,58 @@ std::vector<PlacedSite> placed_sites(const Arene& arene, const std::vector<Site>
     return placed;
 }
 
-Knowledge prepare(Tables tables) {
+namespace {
+
+/// Everything but the rates' linearisation. Faults are thrown, or collected where a list is given.
+Knowledge resolve(Tables tables, std::vector<Fault>* faults) {
     Knowledge knowledge;
     knowledge.tables = std::move(tables);
-    knowledge.groups = index_groups(knowledge.tables);
-    for (auto& name : knowledge.tables.names) name.smiles = canonical_smiles(name.smiles, "names.csv:" + name.name);
-    add_measurements(knowledge);
-    add_rates(knowledge);
-    add_ortho_para_ratios(knowledge);
+    const auto attempt = [&](auto&& step) {
+        try {
+            step();
+        } catch (const Error& e) {
+            if (!faults) throw;
+            faults->push_back({e.where, e.what()});
+        }
+    };
+    attempt([&] { knowledge.groups = index_groups(knowledge.tables); });
+    if (faults && !faults->empty()) return knowledge;
+    knowledge.states = factors::resolve_states(knowledge.tables);
+    for (auto& name : knowledge.tables.names)
+        attempt([&] { name.smiles = canonical_smiles(name.smiles, fmt::format("names.csv:{}:smiles", name.from.line)); });
+    for (const auto& ban : knowledge.tables.bans)
+        for (const auto& [column, smarts] : {std::pair{"smarts", &ban.smarts}, std::pair{"unless", &ban.unless}})
+            if (!smarts->empty())
+                attempt([&, c = column, p = smarts] { check_pattern(*p, fmt::format("bans.csv:{}:{}", ban.from.line, c)); });
+    for (const auto& caution : knowledge.tables.cautions)
+        for (const auto& [column, smarts] : {std::pair{"substrate_smarts", &caution.substrate_smarts},
+                                             std::pair{"product_smarts", &caution.product_smarts}})
+            if (!smarts->empty())
+                attempt([&, c = column, p = smarts] { check_pattern(*p, fmt::format("cautions.csv:{}:{}", caution.from.line, c)); });
+    for (auto& record : knowledge.tables.measurements) attempt([&] { add_measurement(knowledge, record); });
+    for (auto& record : knowledge.tables.rates) attempt([&] { add_rate(knowledge, record); });
+    attempt([&] { add_ortho_para_ratios(knowledge); });
+    return knowledge;
+}
+
+}  // namespace
+
+Knowledge prepare(Tables tables) {
+    auto knowledge = resolve(std::move(tables), nullptr);
     linearise_rates(knowledge);
     return knowledge;
+}
+
+std::vector<Fault> lint_chemistry(const Tables& tables) {
+    std::vector<Fault> faults;
+    auto knowledge = resolve(tables, &faults);
+    if (!faults.empty()) return faults;
+    try {
+        linearise_rates(knowledge);
+    } catch (const Error& e) {
+        faults.push_back({e.where, e.what()});
+    }
+    return faults;
 }
 
 }  // namespace isotally

@@ -1,6 +1,7 @@
-#include <algorithm>
+#include "states.hpp"
 
-#include "isotally/factors.hpp"
+#include <algorithm>
+#include <tuple>
 
 namespace isotally {
 namespace {
@@ -14,22 +15,43 @@ bool is_group(const Substituent& group, const std::string& pattern) {
 
 }  // namespace
 
-RingGroups in_state(const Tables& tables, const Conditions& conditions, const RingGroups& groups) {
-    RingGroups changed = groups;
-    const auto& reaction = tables.reactions[static_cast<std::size_t>(conditions.reaction)];
-    for (auto& group : changed) {
-        if (group < 0) continue;
-        const auto& fed = tables.substituents[static_cast<std::size_t>(group)];
-        for (const auto& state : tables.states) {
-            if ((state.reaction != reaction.id && state.reaction != reaction.family) || !is_group(fed, state.group)) continue;
-            const bool any_acid = state.acid_from == 0 && state.acid_to == 0;
-            if (!any_acid && (conditions.acid_percent < state.acid_from || conditions.acid_percent > state.acid_to))
-                continue;
-            const int found = find_substituent(tables, state.state);
-            if (found >= 0) group = found;
-            break;
+namespace factors {
+
+std::vector<GroupState> resolve_states(const Tables& tables) {
+    std::vector<GroupState> states;
+    for (std::size_t r = 0; r < tables.reactions.size(); ++r)
+        for (const auto& row : tables.states) {
+            if (row.reaction != tables.reactions[r].id && row.reaction != tables.reactions[r].family) continue;
+            for (std::size_t g = 0; g < tables.substituents.size(); ++g)
+                if (is_group(tables.substituents[g], row.group))
+                    states.push_back({static_cast<int>(r), static_cast<int>(g), find_substituent(tables, row.state),
+                                      row.acid_from, row.acid_to, row.both_forms != "no"});
         }
+    std::stable_sort(states.begin(), states.end(), [](const GroupState& a, const GroupState& b) {
+        return std::tie(a.reaction, a.group) < std::tie(b.reaction, b.group);
+    });
+    return states;
+}
+
+}  // namespace factors
+
+const GroupState* state_of(const Knowledge& knowledge, const Conditions& conditions, int group) {
+    const auto key = std::pair(conditions.reaction, group);
+    auto at = std::lower_bound(knowledge.states.begin(), knowledge.states.end(), key, [](const GroupState& state, const auto& wanted) {
+        return std::pair(state.reaction, state.group) < wanted;
+    });
+    for (; at != knowledge.states.end() && std::pair(at->reaction, at->group) == key; ++at) {
+        const bool any_acid = at->acid_from == 0 && at->acid_to == 0;
+        if (any_acid || (conditions.acid_percent >= at->acid_from && conditions.acid_percent <= at->acid_to)) return &*at;
     }
+    return nullptr;
+}
+
+RingGroups in_state(const Knowledge& knowledge, const Conditions& conditions, const RingGroups& groups) {
+    RingGroups changed = groups;
+    for (auto& group : changed)
+        if (group >= 0)
+            if (const auto* state = state_of(knowledge, conditions, group)) group = state->state;
     return changed;
 }
 

@@ -80,9 +80,10 @@ GroupConstants look_up_constants(const Tables& tables, const std::string& family
 
 }  // namespace
 
-Settings read_settings(const Tables& tables, std::string_view family) {
+Settings read_settings(const Knowledge& knowledge, std::string_view family) {
+    const auto& tables = knowledge.tables;
     Settings s;
-    s.tables = &tables;
+    s.knowledge = &knowledge;
     s.family = family;
     s.rho = prior_row(tables, family, "rho");
     s.ortho_offset = prior_row(tables, family, "ortho_offset");
@@ -190,7 +191,7 @@ void add_contribution(const Settings& s, const Conditions& conditions, int group
     form.push_back({{Type::residual, group, relation, 0}, scaled});
     form.push_back({{Type::condition_common, group, 0, reaction}, w});
     form.push_back({{Type::condition, group, relation, reaction}, w});
-    if (s.tables->reactions[static_cast<std::size_t>(reaction)].has_acid) {
+    if (s.knowledge->tables.reactions[static_cast<std::size_t>(reaction)].has_acid) {
         const double stronger = (conditions.acid_percent - s.acid_reference_percent) / 10;
         form.push_back({{Type::acid_kind, c.kind, relation, 0}, w * stronger});
         form.push_back({{Type::acid_slope, group, relation, 0}, w * stronger});
@@ -231,7 +232,7 @@ double correction_count(const Settings& s, std::size_t which, const RingGroups& 
 
 Form site_form(const Settings& s, const Conditions& conditions, const PlacedSite& site, int compound) {
     Form form;
-    const auto groups = in_state(*s.tables, conditions, site.groups);
+    const auto groups = in_state(*s.knowledge, conditions, site.groups);
     int substituents = 0;
     for (int p = 0; p < 6; ++p) {
         const int group = groups[static_cast<std::size_t>(p)];

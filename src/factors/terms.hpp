@@ -71,7 +71,7 @@ struct GroupConstants {
 
 /// Numbers of one family, read once from model.csv and reaction_figures.csv.
 struct Settings {
-    const Tables* tables = nullptr;
+    const Knowledge* knowledge = nullptr;
     std::string family;
     Prior rho, ortho_offset, ortho_steric, ortho_sigma, acceptor_para;
     double rho_of_conditions_sd = 0, ortho_offset_of_conditions_sd = 0, ortho_steric_of_conditions_sd = 0;
@@ -88,7 +88,7 @@ struct Settings {
     std::vector<GroupConstants> groups;  // by substituent
 };
 
-Settings read_settings(const Tables& tables, std::string_view family);
+Settings read_settings(const Knowledge& knowledge, std::string_view family);
 
 /// Throws Error{tables} where a constant is missing and no group stands in for it.
 const GroupConstants& group_constants(const Settings& settings, int substituent);

@@ -12,7 +12,7 @@ namespace {
 
 Provenance provenance_of(const Record& record) {
     return {record.text("source"), record.text("locator"), record.text("status"), record.text("confidence"),
-            record.text("note")};
+            record.text("note"), record.line};
 }
 
 Figure figure_of(const Record& record) {
@@ -37,7 +37,8 @@ Substituent substituent_of(const Record& record) {
             record.text("kind"),
             record.text("prefix"),
             record.text("principal"),
-            {}};
+            {},
+            record.line};
 }
 
 Constant constant_of(const Record& record) {
