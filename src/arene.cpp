@@ -138,8 +138,8 @@ Answer<Arene> from_toolkit(const Tables& tables, const GroupIndex& index, std::u
     return arene;
 }
 
-/// Canonical SMILES of the molecule with the group's first atom bound to a ring atom.
-std::string product(const ROMol& mol, const ROMol& group, unsigned ring_atom) {
+/// The molecule with the group's first atom bound to a ring atom.
+ROMol product(const ROMol& mol, const ROMol& group, unsigned ring_atom) {
     RWMol made(mol);
     const unsigned offset = made.getNumAtoms();
     made.insertMol(group);
@@ -147,7 +147,7 @@ std::string product(const ROMol& mol, const ROMol& group, unsigned ring_atom) {
     auto* atom = made.getAtomWithIdx(ring_atom);
     if (atom->getNumExplicitHs() > 0) atom->setNumExplicitHs(atom->getNumExplicitHs() - 1);
     RDKit::MolOps::sanitizeMol(made);
-    return RDKit::MolToSmiles(made);
+    return made;
 }
 
 /// The new group without its dummy; its first atom keeps the open valence.
@@ -184,11 +184,12 @@ std::vector<Site> sites(const Arene& arene, std::string_view new_group) {
             if (same != known.end()) {
                 entry = same->second;
             } else {
-                const std::string smiles = product(mol, group, atom);
+                auto made = std::make_shared<const Molecule>(Molecule{product(mol, group, atom)});
+                const std::string smiles = RDKit::MolToSmiles(made->mol);
                 const auto twin = std::find_if(found.begin(), found.end(),
                                                [&](const Site& site) { return site.product == smiles; });
                 entry = static_cast<std::size_t>(twin - found.begin());
-                if (twin == found.end()) found.push_back({static_cast<int>(r), {}, 0, smiles});
+                if (twin == found.end()) found.push_back({static_cast<int>(r), {}, 0, smiles, std::move(made)});
                 known.emplace_back(rank[atom], entry);
             }
             auto& site = found[entry];

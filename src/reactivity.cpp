@@ -26,7 +26,7 @@ bool applies(const std::vector<std::string>& reactions, const Reaction& reaction
 }
 
 constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-])]-[#6]";
-constexpr const char* ring_nitro = "c[$([NX3](=O)=O),$([NX3+](=O)[O-])]";
+constexpr const char* nitro_smiles = "*[N+](=O)[O-]";
 /// A sulfo group ortho or para to a hydroxyl or amino group is displaced by nitro, so it counts as one.
 constexpr const char* displaceable_sulfo = "[$([OX2H]),$([NX3;H2,H1;!$(NC=O);!$(NS=O)])]c:[$(c),$(c:c:c)]S(=O)(=O)[OX2H,OX1-]";
 constexpr int most_nitro = 2;
@@ -67,41 +67,55 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
     return chosen;
 }
 
-std::optional<Refusal> decline_molecule(const Tables& tables, std::string_view smiles) {
-    const int groups = count_matches(smiles, nitro, "nitro");
+namespace {
+
+bool has(const Molecule& molecule, const std::string& smarts, const std::string& where) {
+    return count_matches(molecule, *read_pattern(smarts, where)) > 0;
+}
+
+std::optional<Refusal> decline(const Tables& tables, const Molecule& molecule, const Pattern& nitro_group) {
+    const int groups = count_matches(molecule, nitro_group);
     if (groups > most_nitro)
         return Refusal{"molecule", fmt::format("{} nitro groups in one molecule: isotally declines more than two, whatever "
                                                "the purpose",
                                                groups)};
     if (groups == 0) return std::nullopt;
     for (const auto& ban : tables.bans)
-        if (ban.id.starts_with("energetic-") && matches(smiles, ban.smarts, "bans.csv:" + ban.id))
+        if (ban.id.starts_with("energetic-") && has(molecule, ban.smarts, "bans.csv:" + ban.id))
             return Refusal{"molecule", fmt::format("nitro together with another energetic group ({}): isotally declines", ban.reason)};
     return std::nullopt;
+}
+
+}  // namespace
+
+std::optional<Refusal> decline_molecule(const Tables& tables, std::string_view smiles) {
+    return decline(tables, *read_molecule(smiles), *read_pattern(nitro, "nitro"));
 }
 
 std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, const Conditions& conditions,
                                       const std::vector<Site>& sites) {
     const auto& reaction = reaction_of(tables, conditions);
-    if (auto declined = decline_molecule(tables, arene.smiles)) return declined;
-    if (matches("c1ccccc1" + reaction.new_group.substr(1), ring_nitro, "nitro")) {
-        const int nitro_like = count_matches(arene.smiles, nitro, "nitro") + count_matches(arene.smiles, displaceable_sulfo, "sulfo");
-        if (nitro_like + 1 > most_nitro)
+    const auto nitro_group = read_pattern(nitro, "nitro");
+    if (auto declined = decline(tables, *arene.molecule, *nitro_group)) return declined;
+    if (reaction.new_group == nitro_smiles) {
+        const int nitro_groups = count_matches(*arene.molecule, *nitro_group);
+        const int sulfo_groups = count_matches(*arene.molecule, *read_pattern(displaceable_sulfo, "sulfo"));
+        if (nitro_groups + sulfo_groups + 1 > most_nitro)
             return Refusal{reaction.id, fmt::format("{} would bring a third nitro group{}: isotally declines more than two",
                                                     reaction.name,
-                                                    nitro_like > count_matches(arene.smiles, nitro, "nitro")
+                                                    sulfo_groups > 0
                                                         ? " (a sulfo group on a phenol or aniline is displaced and counts as one)"
                                                         : "")};
     }
     for (const auto& ban : tables.bans) {
         if (ban.id.starts_with("energetic-") || !applies(ban.reactions, reaction)) continue;
         const std::string where = "bans.csv:" + ban.id;
-        if (!matches(arene, ban.smarts, where)) continue;
-        if (!ban.unless.empty() && matches(arene, ban.unless, where)) continue;
+        if (!has(*arene.molecule, ban.smarts, where)) continue;
+        if (!ban.unless.empty() && has(*arene.molecule, ban.unless, where)) continue;
         return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {} instead", reaction.name, ban.reason, ban.instead)};
     }
     for (const auto& site : sites)
-        if (auto declined = decline_molecule(tables, site.product)) return declined;
+        if (auto declined = decline(tables, *site.molecule, *nitro_group)) return declined;
     return std::nullopt;
 }
 
@@ -126,11 +140,12 @@ std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& aren
     for (const auto& caution : tables.cautions) {
         if (!applies(caution.reactions, reaction)) continue;
         const std::string where = "cautions.csv:" + caution.code;
-        if (!caution.substrate_smarts.empty() && !matches(arene, caution.substrate_smarts, where)) continue;
+        if (!caution.substrate_smarts.empty() && !has(*arene.molecule, caution.substrate_smarts, where)) continue;
         ProductCaution said{caution.code, caution.text, {}};
         if (!caution.product_smarts.empty()) {
+            const auto pattern = read_pattern(caution.product_smarts, where);
             for (const auto& site : sites)
-                if (matches(site.product, caution.product_smarts, where)) said.products.push_back(site.product);
+                if (count_matches(*site.molecule, *pattern) > 0) said.products.push_back(site.product);
             if (said.products.empty()) continue;
             if (said.products.size() == sites.size()) said.products.clear();
         }

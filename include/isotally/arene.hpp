@@ -44,6 +44,7 @@ struct Site {
     std::vector<int> positions;   // positions on that ring
     int multiplicity = 0;         // all equivalent positions of the molecule
     std::string product;          // canonical SMILES
+    std::shared_ptr<const Molecule> molecule;  // of the product
 };
 
 /// Reads a SMILES of up to 1,000 characters and 300 atoms. Throws Error{input} where it is none;
@@ -63,14 +64,15 @@ std::string canonical_smiles(std::string_view smiles, const std::string& where);
 /// The free positions, grouped by product, for a new group ("*[N+](=O)[O-]").
 std::vector<Site> sites(const Arene& arene, std::string_view new_group);
 
-/// Does a SMARTS pattern occur in the molecule? `where` names the table row for a bad pattern.
-bool matches(const Arene& arene, const std::string& smarts, const std::string& where);
-bool matches(std::string_view smiles, const std::string& smarts, const std::string& where);
+struct Pattern;  // the toolkit's query
 
-/// Throws Error{tables} where a SMARTS pattern can't be read.
-void check_pattern(const std::string& smarts, const std::string& where);
+/// Throws Error{tables} at `where` for a SMARTS that can't be read.
+std::shared_ptr<const Pattern> read_pattern(const std::string& smarts, const std::string& where);
 
-/// How often it occurs.
-int count_matches(std::string_view smiles, const std::string& smarts, const std::string& where);
+/// The toolkit's molecule of a SMILES; throws as parse_arene does, refuses nothing.
+std::shared_ptr<const Molecule> read_molecule(std::string_view smiles);
+
+/// How often a pattern occurs in a molecule.
+int count_matches(const Molecule& molecule, const Pattern& pattern);
 
 }  // namespace isotally

@@ -49,7 +49,7 @@ GroupIndex index_groups(const Tables& tables) {
         const auto& group = tables.substituents[i];
         const std::string where = fmt::format("substituents.csv:{}", group.line);
         if (group.smiles.empty()) {
-            check_pattern(group.smarts, where + ":smarts");
+            read_pattern(group.smarts, where + ":smarts");
             index.generic.push_back(static_cast<int>(i));
             continue;
         }
@@ -89,38 +89,22 @@ std::string canonical_smiles(std::string_view smiles, const std::string& where) 
     }
 }
 
-namespace {
-
-std::unique_ptr<RDKit::RWMol> read_pattern(const std::string& smarts, const std::string& where) {
-    std::unique_ptr<RDKit::RWMol> pattern;
+std::shared_ptr<const Pattern> read_pattern(const std::string& smarts, const std::string& where) {
+    std::unique_ptr<RDKit::RWMol> query;
     try {
-        pattern.reset(RDKit::SmartsToMol(smarts));
+        query.reset(RDKit::SmartsToMol(smarts));
     } catch (const std::exception&) {
     }
-    if (!pattern) throw Error(ErrorKind::tables, where, "the pattern can't be read: " + smarts);
-    return pattern;
+    if (!query) throw Error(ErrorKind::tables, where, "the pattern can't be read: " + smarts);
+    return std::make_shared<const Pattern>(Pattern{std::move(*query)});
 }
 
-int count(const RDKit::ROMol& mol, const std::string& smarts, const std::string& where) {
-    return static_cast<int>(RDKit::SubstructMatch(mol, *read_pattern(smarts, where)).size());
+std::shared_ptr<const Molecule> read_molecule(std::string_view smiles) {
+    return std::make_shared<const Molecule>(Molecule{RDKit::ROMol(*toolkit::read_smiles(smiles))});
 }
 
-}  // namespace
-
-void check_pattern(const std::string& smarts, const std::string& where) {
-    read_pattern(smarts, where);
-}
-
-bool matches(const Arene& arene, const std::string& smarts, const std::string& where) {
-    return count(arene.molecule->mol, smarts, where) > 0;
-}
-
-bool matches(std::string_view smiles, const std::string& smarts, const std::string& where) {
-    return count_matches(smiles, smarts, where) > 0;
-}
-
-int count_matches(std::string_view smiles, const std::string& smarts, const std::string& where) {
-    return count(*toolkit::read_smiles(smiles), smarts, where);
+int count_matches(const Molecule& molecule, const Pattern& pattern) {
+    return static_cast<int>(RDKit::SubstructMatch(molecule.mol, pattern.query).size());
 }
 
 }  // namespace isotally

@@ -17,6 +17,10 @@ struct Molecule {
     RDKit::ROMol mol;
 };
 
+struct Pattern {
+    RDKit::RWMol query;
+};
+
 namespace toolkit {
 
 inline constexpr std::size_t longest_smiles = 1000;

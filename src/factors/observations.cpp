@@ -268,12 +268,12 @@ Knowledge resolve(Tables tables, std::vector<Fault>* faults) {
     for (const auto& ban : knowledge.tables.bans)
         for (const auto& [column, smarts] : {std::pair{"smarts", &ban.smarts}, std::pair{"unless", &ban.unless}})
             if (!smarts->empty())
-                attempt([&, c = column, p = smarts] { check_pattern(*p, fmt::format("bans.csv:{}:{}", ban.from.line, c)); });
+                attempt([&, c = column, p = smarts] { read_pattern(*p, fmt::format("bans.csv:{}:{}", ban.from.line, c)); });
     for (const auto& caution : knowledge.tables.cautions)
         for (const auto& [column, smarts] : {std::pair{"substrate_smarts", &caution.substrate_smarts},
                                              std::pair{"product_smarts", &caution.product_smarts}})
             if (!smarts->empty())
-                attempt([&, c = column, p = smarts] { check_pattern(*p, fmt::format("cautions.csv:{}:{}", caution.from.line, c)); });
+                attempt([&, c = column, p = smarts] { read_pattern(*p, fmt::format("cautions.csv:{}:{}", caution.from.line, c)); });
     for (auto& record : knowledge.tables.measurements) attempt([&] { add_measurement(knowledge, record); });
     for (auto& record : knowledge.tables.rates) attempt([&] { add_rate(knowledge, record); });
     attempt([&] { add_ortho_para_ratios(knowledge); });

@@ -44,7 +44,7 @@ double square(double x) {
 }
 
 /// Missing constants come from the group it is like, widened at each step.
-GroupConstants look_up_constants(const Tables& tables, const std::string& family, const Substituent& substituent) {
+GroupConstants look_up_constants(const Tables& tables, double stand_in_sd, double like_sd, const Substituent& substituent) {
     const auto* group = &substituent;
     GroupConstants c;
     const auto kind = std::find(kinds.begin(), kinds.end(), group->kind);
@@ -59,7 +59,7 @@ GroupConstants look_up_constants(const Tables& tables, const std::string& family
                 if (found != at->constants.end()) {
                     value = found->second.value;
                     sd = std::sqrt(square(found->second.sd) + square(widening) +
-                                   (first ? 0 : square(model_figure(tables, family, "sigma_stand_in_sd").value)));
+                                   (first ? 0 : square(stand_in_sd)));
                     if (source) *source = found->second.from.source;
                     c.assumed |= step > 0 || !first;
                     return;
@@ -68,7 +68,7 @@ GroupConstants look_up_constants(const Tables& tables, const std::string& family
             }
             const int next = at->like.empty() ? -1 : find_substituent(tables, at->like);
             at = next < 0 ? nullptr : &tables.substituents[static_cast<std::size_t>(next)];
-            widening += model_figure(tables, family, "like_sd").value;
+            widening += like_sd;
         }
         c.missing = fmt::format("{} has no {} and no group to stand in for it", group->id, *quantities.begin());
     };
@@ -123,7 +123,8 @@ Settings read_settings(const Knowledge& knowledge, std::string_view family) {
         const auto figure = reaction.figures.find("selectivity");
         s.selectivity.push_back(figure == reaction.figures.end() ? 1.0 : figure->second.value);
     }
-    for (const auto& group : tables.substituents) s.groups.push_back(look_up_constants(tables, s.family, group));
+    const double stand_in_sd = plain("sigma_stand_in_sd"), like_sd = plain("like_sd");
+    for (const auto& group : tables.substituents) s.groups.push_back(look_up_constants(tables, stand_in_sd, like_sd, group));
     return s;
 }
 
