@@ -14,12 +14,12 @@ const Measurement& record_of(const Tables& tables, const std::string& id) {
     return *std::find_if(tables.measurements.begin(), tables.measurements.end(), [&](const Measurement& m) { return m.id == id; });
 }
 
-/// ln of the normal density of the rows of a record under the model (rows that are bounds left out).
+/// ln of the normal density of the rows of a record under the model (bounds left out).
 double log_density(const Observation& observation, const SiteFactors& factors) {
     const auto n = factors.mean.size();
     std::vector<const ObservedRow*> rows;
     for (const auto& row : observation.rows)
-        if (!row.bound) rows.push_back(&row);
+        if (row.kind == ObservedRow::Kind::figure) rows.push_back(&row);
     const auto m = static_cast<Eigen::Index>(rows.size());
     if (m == 0) return 0;
     Eigen::MatrixXd weights = Eigen::MatrixXd::Zero(m, static_cast<Eigen::Index>(n));
@@ -79,7 +79,8 @@ std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_
     std::vector<CheckedRecord> checked;
     for (const auto& observation : knowledge.observations) {
         const auto& reaction = knowledge.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)];
-        if (reaction.family != family || observation.kind != Observation::Kind::shares || observation.sites.size() < 2) continue;
+        if (reaction.family != family || observation.kind != Observation::Kind::shares ||
+            observation.status == "practice" || observation.sites.size() < 2) continue;
         auto& model = without[observation.compound];
         if (!model) model = leave_out(*full, observation.compound);
         checked.push_back(check_record(knowledge, *model, family, observation, draws));

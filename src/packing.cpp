@@ -37,7 +37,7 @@ void serialize(Archive& ar, Reaction& x) {
 }
 template <class Archive>
 void serialize(Archive& ar, State& x) {
-    ar(x.reaction, x.group, x.state, x.acid_from, x.acid_to, x.both_forms, x.from);
+    ar(x.reactions, x.group, x.state, x.acid_from, x.acid_to, x.both_forms, x.from);
 }
 template <class Archive>
 void serialize(Archive& ar, Ban& x) {
@@ -92,7 +92,7 @@ void serialize(Archive& ar, PlacedSite& x) {
 }
 template <class Archive>
 void serialize(Archive& ar, ObservedRow& x) {
-    ar(x.weights, x.value, x.noise_sd, x.bound);
+    ar(x.weights, x.value, x.noise_sd, x.kind);
 }
 template <class Archive>
 void serialize(Archive& ar, Observation& x) {

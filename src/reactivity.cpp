@@ -112,12 +112,26 @@ std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, 
         const std::string where = "bans.csv:" + ban.id;
         if (!has(*arene.molecule, ban.smarts, where)) continue;
         if (!ban.unless.empty() && has(*arene.molecule, ban.unless, where)) continue;
-        return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {} instead", reaction.name, ban.reason, ban.instead)};
+        return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {}", reaction.name, ban.reason, ban.instead)};
     }
     for (const auto& site : sites)
         if (auto declined = decline(tables, *site.molecule, *nitro_group)) return declined;
     return std::nullopt;
 }
+
+namespace {
+
+/// "its best position is about 10^8 times slower than one of benzene, and the reaction stops at 10^6 times".
+std::string too_slow(double log10_best, double log10_floor) {
+    const auto beside_benzene = [](double log10_factor) {
+        if (std::abs(log10_factor) < 1) return fmt::format("about {:.1g} times as fast as", std::pow(10.0, log10_factor));
+        return fmt::format("about 10^{:.0f} times {} than", std::abs(log10_factor), log10_factor < 0 ? "slower" : "faster");
+    };
+    return fmt::format("its best position reacts {} one of benzene, and the reaction needs a position {} that",
+                       beside_benzene(log10_best), beside_benzene(log10_floor));
+}
+
+}  // namespace
 
 std::optional<Refusal> refuse_below_floor(const Tables& tables, const Conditions& conditions,
                                           const std::vector<double>& log10_factors) {
@@ -127,10 +141,8 @@ std::optional<Refusal> refuse_below_floor(const Tables& tables, const Conditions
     const double best = *std::max_element(log10_factors.begin(), log10_factors.end());
     if (best >= std::log10(*floor)) return std::nullopt;
     return Refusal{reaction.id,
-                   fmt::format("{} does not go on this ring: its best position has about 10^{:.1f} of the reactivity of a "
-                               "position of benzene, the reaction needs 10^{:.1f}{}{}",
-                               reaction.name, best, std::log10(*floor), reaction.instead.empty() ? "" : "; people ",
-                               reaction.instead.empty() ? "" : reaction.instead + " instead")};
+                   fmt::format("{} does not go on this ring: {}; people {}", reaction.name, too_slow(best, std::log10(*floor)),
+                               reaction.instead)};
 }
 
 std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene, const Conditions& conditions,
@@ -138,7 +150,7 @@ std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& aren
     const auto& reaction = reaction_of(tables, conditions);
     std::vector<std::pair<int, ProductCaution>> found;
     for (const auto& caution : tables.cautions) {
-        if (!applies(caution.reactions, reaction)) continue;
+        if (caution.severity == 0 || !applies(caution.reactions, reaction)) continue;
         const std::string where = "cautions.csv:" + caution.code;
         if (!caution.substrate_smarts.empty() && !has(*arene.molecule, caution.substrate_smarts, where)) continue;
         ProductCaution said{caution.code, caution.text, {}};
@@ -171,12 +183,17 @@ std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene&
             if (std::find(notes.begin(), notes.end(), note) == notes.end()) notes.push_back(note);
         }
     if (!reaction.note.empty()) notes.push_back(reaction.note);
+    for (const auto& note : tables.cautions)
+        if (note.severity == 0 && applies(note.reactions, reaction) &&
+            (note.substrate_smarts.empty() || has(*arene.molecule, note.substrate_smarts, "cautions.csv:" + note.code)))
+            notes.push_back(note.text);
     if (const auto limit = figure(reaction, "encounter_limit"); limit && relative_rate > *limit)
-        notes.push_back(fmt::format("the rate is limited by encounter to about {:g} times benzene in this medium; the shares are not",
+        notes.push_back(fmt::format("the relative rate is that of the ring itself; in this medium encounter holds every ring to about "
+                                    "{:g} times benzene and leaves the shares as they are",
                                     *limit));
-    if (const auto reach = figure(reaction, "reach"); reach && relative_rate < *reach)
-        notes.push_back(fmt::format("slower than these conditions usually convert (about {:g} of benzene): run stronger, hotter or longer",
-                                    *reach));
+    const double fraction = model_figure(tables, reaction.family, "reach_fraction").value;
+    if (const auto reach = figure(reaction, "reach"); reach && relative_rate < fraction * *reach)
+        notes.push_back("far slower than what these conditions usually convert: expect to run stronger, hotter or longer");
     return notes;
 }
 

@@ -110,11 +110,9 @@ ShareDraws draw_shares(const Tables& tables, std::string_view family, const std:
 
 MoleculeName name_molecule(const Tables& tables, const Arene& arene) {
     MoleculeName out;
-    if (arene.rings.size() == 1) {
-        const auto ring = name_ring(tables, arene.rings.front().groups);
-        out.systematic = ring.systematic;
-        out.name = ring.general ? ring.general : ring.systematic;
-    }
+    const auto ring = name_ring(tables, arene.rings.front().groups);
+    out.systematic = ring.systematic;
+    out.name = ring.general ? ring.general : ring.systematic;
     for (const auto& known : tables.names)
         if (known.preferred && known.smiles == arene.smiles) out.name = known.name;
     return out;
@@ -122,11 +120,11 @@ MoleculeName name_molecule(const Tables& tables, const Arene& arene) {
 
 namespace {
 
-/// Names of a product: of the ring it is on if that is the only one, else a known name if it has one.
+/// Names of a product, from the ring it is made on (other rings are groups of it), or a known name.
 void name_product(const Knowledge& knowledge, const Arene& arene, int new_group, IsomerShare& share) {
     const auto& tables = knowledge.tables;
-    if (arene.rings.size() == 1 && new_group >= 0) {
-        auto groups = arene.rings.front().groups;
+    if (new_group >= 0) {
+        auto groups = arene.rings[static_cast<std::size_t>(share.site.ring)].groups;
         groups[static_cast<std::size_t>(share.site.positions.front())] = new_group;
         const auto ring = name_ring(tables, groups);
         share.product_systematic_name = ring.systematic;
@@ -184,7 +182,11 @@ Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& mo
     answer.ortho_para_ratio = drawn.ortho_para_ratio;
     answer.relative_rate = drawn.relative_rate;
     answer.measured_by = std::move(factors.measured_by);
-    answer.cautions = cautions_for(tables, arene, conditions, found);
+    const double told = model_figure(tables, reaction.family, "told_percent").value;
+    std::vector<Site> notable;  // what is made in traces only needs no caution of its own
+    for (std::size_t i = 0; i < found.size(); ++i)
+        if (drawn.percent[i].value >= told) notable.push_back(found[i]);
+    answer.cautions = cautions_for(tables, arene, conditions, notable);
     answer.notes = reaction_notes(knowledge, arene, conditions, drawn.relative_rate.value);
     return answer;
 }

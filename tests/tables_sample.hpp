@@ -69,7 +69,7 @@ inline std::vector<TableFile> sample_files() {
 ]
 )"},
         {"states.csv",
-         "reaction,group,state,acid_from,acid_to,both_forms,source,locator,status,confidence,note\n"
+         "reactions,group,state,acid_from,acid_to,both_forms,source,locator,status,confidence,note\n"
          "nitration-x,kind:acceptor,NO2,70,90,no,,,practice,low,\n"},
         {"substituents.csv", "id,name,smiles,smarts,rank,like,kind,prefix,principal,note\n"
                              "NO2,nitro,*[N+](=O)[O-],,,,acceptor,nitro,,\n"

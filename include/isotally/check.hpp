@@ -32,7 +32,8 @@ struct Scores {
            log_score = 0;
 };
 
-/// All records of a family with use other than no, each predicted without any measurement on its compound.
+/// All literature records of a family with use other than no (rows of practice teach but are not scored), each
+/// predicted without any measurement on its compound.
 std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family, const Draws& draws);
 
 /// Errors, coverage and width are over the isomers observed or predicted above 1 % in complete records; the

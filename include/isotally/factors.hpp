@@ -16,6 +16,12 @@ namespace isotally {
 enum Relation { ortho = 0, meta = 1, para = 2 };
 inline constexpr const char* relation_names[] = {"ortho", "meta", "para"};
 
+/// Relation of two different positions of a ring.
+constexpr Relation relation_between(int one, int other) {
+    const int apart = (one - other + 6) % 6;
+    return static_cast<Relation>((apart < 6 - apart ? apart : 6 - apart) - 1);
+}
+
 /// Conditions of one step.
 struct Conditions {
     int reaction = -1;          // index in Tables::reactions
@@ -33,10 +39,11 @@ struct PlacedSite {
 
 /// One linear observation of the sites of a compound: sum of weight * log10 F = value + noise.
 struct ObservedRow {
+    enum class Kind { figure, at_most, rule };
     std::vector<std::pair<int, double>> weights;  // index in Observation::sites, weight
     double value = 0;
     double noise_sd = 0;        // its own
-    bool bound = false;         // known only as "less than" or "more than"
+    Kind kind = Kind::figure;   // at_most: known only as "not more than"; rule: of the trade, no measurement
 };
 
 /// A record of the tables, resolved onto the sites of its compound.

@@ -33,7 +33,7 @@ struct ProductCaution {
     std::vector<std::string> products;  // SMILES of the products it is about; empty: the step as a whole
 };
 
-/// Cautions of a step, the worst first; the standing one last.
+/// Cautions of a step, the worst first; the standing one last. `sites`: the products worth a caution.
 std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene, const Conditions& conditions,
                                          const std::vector<Site>& sites);
 

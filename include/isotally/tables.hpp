@@ -64,7 +64,7 @@ struct Reaction {
 
 /// What a medium makes of a group (a row of states.csv).
 struct State {
-    std::string reaction;   // reaction id or family
+    std::vector<std::string> reactions;  // reaction ids or families
     std::string group;      // substituent id, or "kind:acceptor", or "principal:ketone"
     std::string state;      // substituent id
     double acid_from = 0, acid_to = 0;  // weight percent; both 0: any

@@ -291,7 +291,7 @@ std::vector<RelatedRows> related_rows(const TablesView& view, const FileSchema& 
         add_rows(view, all, "stands_in_for", "substituents.csv", with("like", id));
     } else if (schema.kind == "reactions") {
         add_rows(view, all, "figures", "reaction_figures.csv", with("reaction", id));
-        add_rows(view, all, "states", "states.csv", with("reaction", id));
+        add_rows(view, all, "states", "states.csv", [&](const Record& row) { return concerns(row, record); });
         add_rows(view, all, "bans", "bans.csv", [&](const Record& row) { return concerns(row, record); });
         add_rows(view, all, "cautions", "cautions.csv",
                  [&](const Record& row) { return concerns(row, record); });

@@ -4,6 +4,7 @@
 #include <Eigen/Core>
 #include <algorithm>
 #include <cmath>
+#include <set>
 
 #include "terms.hpp"
 
@@ -28,7 +29,8 @@ struct Fit {
     Eigen::LLT<Eigen::MatrixXd> factor;  // of S = H P H' + R
     std::vector<const Observation*> observations;
     std::vector<std::size_t> observation_of_row;
-    std::map<int, std::vector<std::pair<const Observation*, int>>> carriers;  // of a group: record, groups on its ring
+    std::map<std::pair<int, Relation>, std::vector<std::pair<const Observation*, int>>>
+        carriers;  // of a group at a relation: record, groups on its ring
 };
 
 struct FamilyModel {
@@ -58,15 +60,22 @@ Form row_form(const Settings& settings, const Observation& observation, const Ob
     return form;
 }
 
-/// Groups that the record tells something of (bounds and rules of the trade are no measurement).
+/// Which groups at which relation the record measures (bounds and rules of the trade are no measurement).
 void note_carriers(Fit& fit, const Observation& observation) {
-    const bool measured = std::any_of(observation.rows.begin(), observation.rows.end(), [](const ObservedRow& row) { return !row.bound; });
-    if (!measured) return;
-    auto groups = in_state(*fit.settings.knowledge, observation.conditions, observation.sites.front().groups);
-    const int carried = static_cast<int>(6 - std::count(groups.begin(), groups.end(), -1));
-    std::sort(groups.begin(), groups.end());
-    for (const auto* group = groups.begin(); group != groups.end(); ++group)
-        if (*group >= 0 && (group == groups.begin() || *group != *(group - 1))) fit.carriers[*group].emplace_back(&observation, carried);
+    std::set<std::pair<int, Relation>> seen;
+    int carried = 0;
+    for (const auto& row : observation.rows) {
+        if (row.kind != ObservedRow::Kind::figure) continue;
+        for (const auto& [index, weight] : row.weights) {
+            const auto& site = observation.sites[static_cast<std::size_t>(index)];
+            const auto groups = in_state(*fit.settings.knowledge, observation.conditions, site.groups);
+            carried = static_cast<int>(6 - std::count(groups.begin(), groups.end(), -1));
+            for (int p = 0; p < 6; ++p)
+                if (groups[static_cast<std::size_t>(p)] >= 0 && p != site.position)
+                    seen.emplace(groups[static_cast<std::size_t>(p)], relation_between(p, site.position));
+        }
+    }
+    for (const auto& one : seen) fit.carriers[one].emplace_back(&observation, carried);
 }
 
 }  // namespace
@@ -199,7 +208,7 @@ Posterior posterior(const FamilyModel& model, const std::vector<Form>& forms) {
 /// correlated by its own constants, assumed by another group's.
 void tell_evidence(const Fit& fit, Contribution& contribution, std::string_view left_out) {
     bool mono = false, poly = false;
-    const auto found = fit.carriers.find(contribution.substituent);
+    const auto found = fit.carriers.find({contribution.substituent, contribution.relation});
     if (found != fit.carriers.end())
         for (const auto& [observation, carried] : found->second) {
             if (observation->compound == left_out) continue;
@@ -231,8 +240,7 @@ void explain_sites(const FamilyModel& model, const Conditions& conditions, int c
         for (int p = 0; p < 6; ++p) {
             const int group = groups[static_cast<std::size_t>(p)];
             if (group < 0 || p == site.position) continue;
-            const int apart = std::min((p - site.position + 6) % 6, (site.position - p + 6) % 6);
-            contributions.push_back({group, static_cast<Relation>(apart - 1), 0, 0, "", {}});
+            contributions.push_back({group, relation_between(p, site.position), 0, 0, "", {}});
             factors::add_contribution(settings, conditions, group, contributions.back().relation, 1, forms.emplace_back());
             factors::compact(forms.back());
         }
@@ -285,6 +293,17 @@ SiteFactors site_factors(const FamilyModel& model, const Conditions& conditions,
     return out;
 }
 
+namespace factors {
+
+RowMarginal row_marginal(const FamilyModel& model, const Observation& observation, const ObservedRow& row) {
+    const auto& fit = *model.fit;
+    const auto form = row_form(fit.settings, observation, row, fit.compounds.find(observation.compound)->second);
+    const auto at = posterior(model, {form});
+    return {at.mean(0), at.covariance(0, 0)};
+}
+
+}  // namespace factors
+
 std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge& knowledge) {
     std::map<std::string, std::size_t> counts;
     std::vector<std::string> families;
@@ -293,9 +312,14 @@ std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge&
         families.push_back(reaction.family);
         const auto model = fit_family(knowledge, reaction.family);
         for (std::size_t i = 0; i < knowledge.tables.substituents.size(); ++i) {
-            Contribution contribution{static_cast<int>(i), para, 0, 0, "", {}};
-            tell_evidence(*model->fit, contribution, "");
-            ++counts[reaction.family + ", " + contribution.evidence];
+            std::string best;  // of its three positions
+            for (const auto relation : {ortho, meta, para}) {
+                Contribution contribution{static_cast<int>(i), relation, 0, 0, "", {}};
+                tell_evidence(*model->fit, contribution, "");
+                if (best.empty() || contribution.evidence == "measured" || (contribution.evidence == "inferred" && best != "measured"))
+                    best = contribution.evidence;
+            }
+            ++counts[reaction.family + ", " + best];
         }
     }
     return {counts.begin(), counts.end()};

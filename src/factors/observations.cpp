@@ -3,7 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
-#include "fit.hpp"
+#include "linear.hpp"
 #include "states.hpp"
 #include "terms.hpp"
 
@@ -14,14 +14,14 @@ using factors::Settings;
 
 /// Numbers that turn printed percentages into log-ratios with noise (model.csv).
 struct Noise {
-    double points, log10, minor, weak, bound_fraction, bound_sd, unlisted_percent, stray_percent, stray_sd;
+    double points, log10, minor, weak, softness, unlisted_percent, named_percent, stray_percent;
 };
 
 Noise read_noise(const Tables& tables, std::string_view family) {
     const auto value = [&](const char* quantity) { return model_figure(tables, family, quantity).value; };
     return {value("laboratory_sd_points"), value("laboratory_sd_log10"), value("laboratory_sd_minor_log10"),
-            value("weak_widening"),        value("bound_fraction"),      value("bound_sd"),
-            value("unlisted_percent"),     value("stray_percent"),       value("stray_sd")};
+            value("weak_widening"),        value("bound_softness"),      value("unlisted_percent"),
+            value("named_percent"),        value("stray_percent")};
 }
 
 struct Placed {
@@ -83,26 +83,25 @@ void add_share_rows(const Tables& tables, const Measurement& record, const std::
     const auto top = static_cast<std::size_t>(std::max_element(percent.begin(), percent.end()) - percent.begin());
     if (percent[top] <= 0) return;
     const auto reference = log_share(percent[top], sd[top], sites[top].multiplicity, widening, noise);
-    const auto row = [&](std::size_t site, double value, double row_sd, bool bound) {
-        out.rows.push_back({{{static_cast<int>(site), 1.0}, {static_cast<int>(top), -1.0}}, value, row_sd, bound});
+    using Kind = ObservedRow::Kind;
+    const auto row = [&](std::size_t site, double value, double row_sd, Kind kind) {
+        out.rows.push_back({{{static_cast<int>(site), 1.0}, {static_cast<int>(top), -1.0}}, value, row_sd, kind});
+    };
+    const auto at_most = [&](std::size_t site, double limit) {
+        row(site, std::log10(limit / sites[site].multiplicity) - reference.value, noise.softness, Kind::at_most);
     };
     out.shared_sd = reference.sd;
-    const bool only_named = record.use == "bound";
-    double rest = 0;  // percent left for the isomers that are not listed
-    int unlisted = 0;
-    for (std::size_t i = 0; i < sites.size(); ++i) unlisted += percent[i] > 0 ? 0 : sites[i].multiplicity;
-    if (only_named) rest = std::max(noise.unlisted_percent, 100 - std::min(percent[top], 95.0));
     for (std::size_t i = 0; i < sites.size(); ++i) {
         if (i == top) continue;
-        if (percent[i] > 0 && !only_named) {
+        if (record.use == "bound") {
+            at_most(i, std::max(noise.unlisted_percent, 100 - std::min(percent[top], noise.named_percent)));
+        } else if (percent[i] > 0 && is_stray(tables, out.sites[i], percent[i], noise)) {
+            at_most(i, percent[i]);
+        } else if (percent[i] > 0) {
             const auto share = log_share(percent[i], sd[i], sites[i].multiplicity, widening, noise);
-            const bool stray = is_stray(tables, out.sites[i], percent[i], noise);
-            row(i, share.value - reference.value, stray ? std::hypot(share.sd, noise.stray_sd) : share.sd, stray);
-        } else if (only_named) {
-            row(i, std::log10(noise.bound_fraction * rest / unlisted) - reference.value, noise.bound_sd, true);
+            row(i, share.value - reference.value, share.sd, Kind::figure);
         } else if (record.complete) {
-            row(i, std::log10(noise.bound_fraction * noise.unlisted_percent / sites[i].multiplicity) - reference.value,
-                noise.bound_sd, true);
+            at_most(i, noise.unlisted_percent);
         }
     }
 }
@@ -153,12 +152,8 @@ void add_measurement(Knowledge& knowledge, Measurement& record) {
 
 /// Relation of the only group of a monosubstituted benzene to a site of it.
 Relation relation_to_group(const PlacedSite& site) {
-    for (int p = 0; p < 6; ++p)
-        if (site.groups[static_cast<std::size_t>(p)] >= 0) {
-            const int apart = std::min((p - site.position + 6) % 6, (site.position - p + 6) % 6);
-            return static_cast<Relation>(apart - 1);
-        }
-    return ortho;
+    const auto group = std::find_if(site.groups.begin(), site.groups.end(), [](int g) { return g >= 0; });
+    return relation_between(static_cast<int>(group - site.groups.begin()), site.position);
 }
 
 void add_rate(Knowledge& knowledge, RateFigure& record) {
@@ -171,7 +166,7 @@ void add_rate(Knowledge& knowledge, RateFigure& record) {
     if (record.use == "no" || record.use == "bound") return;
     auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
     const double sd = record.sd_log10 * (record.use == "weak" ? read_noise(tables, row.family).weak : 1);
-    ObservedRow observed{{}, std::log10(record.value), sd, false};
+    ObservedRow observed{{}, std::log10(record.value), sd, ObservedRow::Kind::figure};
     out.kind = record.relation.empty() ? Observation::Kind::rate : Observation::Kind::factor;
     if (out.kind == Observation::Kind::factor) {
         for (std::size_t i = 0; i < out.sites.size(); ++i)
@@ -198,7 +193,8 @@ void add_ortho_para_ratios(Knowledge& knowledge) {
             auto out = start(placed, where, conditions_of(tables, static_cast<int>(r), {}, {}), figure->second.from);
             out.kind = Observation::Kind::rule;
             ObservedRow observed{{}, std::log10(figure->second.value),
-                                 model_figure(tables, reaction.family, "ortho_para_rule_sd").value, true};
+                                 model_figure(tables, reaction.family, "ortho_para_rule_sd").value,
+                                 ObservedRow::Kind::rule};
             for (std::size_t i = 0; i < out.sites.size(); ++i) {
                 const auto relation = relation_to_group(out.sites[i]);
                 if (relation != meta) observed.weights.emplace_back(static_cast<int>(i), relation == ortho ? 1.0 : -1.0);
@@ -206,34 +202,6 @@ void add_ortho_para_ratios(Knowledge& knowledge) {
             out.rows.push_back(std::move(observed));
             knowledge.observations.push_back(std::move(out));
         }
-}
-
-/// A rate is linearised with the shares the family predicts: log10 k = c + sum of share * log10 F.
-void linearise_rates(Knowledge& knowledge) {
-    std::vector<std::string> families;
-    for (const auto& reaction : knowledge.tables.reactions)
-        if (std::find(families.begin(), families.end(), reaction.family) == families.end()) families.push_back(reaction.family);
-    for (const auto& family : families) {
-        std::vector<bool> use(knowledge.observations.size());
-        for (std::size_t i = 0; i < use.size(); ++i) use[i] = knowledge.observations[i].kind != Observation::Kind::rate;
-        const auto model = factors::fit_rows(knowledge, family, use);
-        for (auto& observation : knowledge.observations) {
-            if (observation.kind != Observation::Kind::rate) continue;
-            if (knowledge.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)].family != family) continue;
-            const auto at = site_factors(*model, observation.conditions, observation.compound, observation.sites, false);
-            double total = 0;
-            for (std::size_t i = 0; i < at.mean.size(); ++i) total += observation.sites[i].multiplicity * std::pow(10.0, at.mean[i]);
-            double predicted = std::log10(total / 6), linear = 0;
-            auto& row = observation.rows.front();
-            row.weights.clear();
-            for (std::size_t i = 0; i < at.mean.size(); ++i) {
-                const double share = observation.sites[i].multiplicity * std::pow(10.0, at.mean[i]) / total;
-                row.weights.emplace_back(static_cast<int>(i), share);
-                linear += share * at.mean[i];
-            }
-            row.value -= predicted - linear;
-        }
-    }
 }
 
 }  // namespace
@@ -248,7 +216,7 @@ std::vector<PlacedSite> placed_sites(const Arene& arene, const std::vector<Site>
 
 namespace {
 
-/// Everything but the rates' linearisation. Faults are thrown, or collected where a list is given.
+/// Everything but what make_linear does. Faults are thrown, or collected where a list is given.
 Knowledge resolve(Tables tables, std::vector<Fault>* faults) {
     Knowledge knowledge;
     knowledge.tables = std::move(tables);
@@ -284,7 +252,7 @@ Knowledge resolve(Tables tables, std::vector<Fault>* faults) {
 
 Knowledge prepare(Tables tables) {
     auto knowledge = resolve(std::move(tables), nullptr);
-    linearise_rates(knowledge);
+    factors::make_linear(knowledge);
     return knowledge;
 }
 
@@ -293,7 +261,7 @@ std::vector<Fault> lint_chemistry(const Tables& tables) {
     auto knowledge = resolve(tables, &faults);
     if (!faults.empty()) return faults;
     try {
-        linearise_rates(knowledge);
+        factors::make_linear(knowledge);
     } catch (const Error& e) {
         faults.push_back({e.where, e.what()});
     }

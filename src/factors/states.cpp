@@ -21,7 +21,10 @@ std::vector<GroupState> resolve_states(const Tables& tables) {
     std::vector<GroupState> states;
     for (std::size_t r = 0; r < tables.reactions.size(); ++r)
         for (const auto& row : tables.states) {
-            if (row.reaction != tables.reactions[r].id && row.reaction != tables.reactions[r].family) continue;
+            const auto holds_for = [&](const std::string& word) {
+                return std::find(row.reactions.begin(), row.reactions.end(), word) != row.reactions.end();
+            };
+            if (!holds_for(tables.reactions[r].id) && !holds_for(tables.reactions[r].family) && !holds_for("*")) continue;
             for (std::size_t g = 0; g < tables.substituents.size(); ++g)
                 if (is_group(tables.substituents[g], row.group))
                     states.push_back({static_cast<int>(r), static_cast<int>(g), find_substituent(tables, row.state),

@@ -10,6 +10,7 @@ namespace isotally::factors {
 namespace {
 
 constexpr double kelvin = 273.15;
+constexpr int most_likenesses = 4;
 
 const Figure* find_figure(const Tables& tables, std::string_view family, const std::string& quantity) {
     const Figure* general = nullptr;
@@ -44,15 +45,21 @@ double square(double x) {
 }
 
 /// Missing constants come from the group it is like, widened at each step.
-GroupConstants look_up_constants(const Tables& tables, double stand_in_sd, double like_sd, const Substituent& substituent) {
-    const auto* group = &substituent;
+GroupConstants look_up_constants(const Tables& tables, double stand_in_sd, double like_sd, int index) {
+    const auto* group = &tables.substituents[static_cast<std::size_t>(index)];
     GroupConstants c;
+    c.head = index;
+    for (int step = 0; step < most_likenesses; ++step) {
+        const int next = find_substituent(tables, tables.substituents[static_cast<std::size_t>(c.head)].like);
+        if (next < 0) break;
+        c.head = next;
+    }
     const auto kind = std::find(kinds.begin(), kinds.end(), group->kind);
     c.kind = static_cast<int>(kind - kinds.begin());
     const auto look = [&](std::initializer_list<const char*> quantities, double& value, double& sd, std::string* source) {
         const auto* at = group;
         double widening = 0;
-        for (int step = 0; at && step < 4; ++step) {
+        for (int step = 0; at && step < most_likenesses; ++step) {
             bool first = true;
             for (const char* quantity : quantities) {
                 const auto found = at->constants.find(quantity);
@@ -124,7 +131,9 @@ Settings read_settings(const Knowledge& knowledge, std::string_view family) {
         s.selectivity.push_back(figure == reaction.figures.end() ? 1.0 : figure->second.value);
     }
     const double stand_in_sd = plain("sigma_stand_in_sd"), like_sd = plain("like_sd");
-    for (const auto& group : tables.substituents) s.groups.push_back(look_up_constants(tables, stand_in_sd, like_sd, group));
+    s.own_fraction = plain("own_fraction");
+    for (std::size_t i = 0; i < tables.substituents.size(); ++i)
+        s.groups.push_back(look_up_constants(tables, stand_in_sd, like_sd, static_cast<int>(i)));
     return s;
 }
 
@@ -137,6 +146,7 @@ const GroupConstants& group_constants(const Settings& settings, int substituent)
 Prior prior_of(const Settings& s, const Unknown& u) {
     const auto a = static_cast<std::size_t>(u.a), b = static_cast<std::size_t>(u.b);
     const auto kind = [&] { return static_cast<std::size_t>(group_constants(s, u.a).kind); };
+    const auto own = [&] { return group_constants(s, u.a).head == u.a ? 1.0 : s.own_fraction; };
     switch (u.type) {
         case Type::rho: return s.rho;
         case Type::rho_of_conditions: return {0, s.rho_of_conditions_sd};
@@ -147,20 +157,20 @@ Prior prior_of(const Settings& s, const Unknown& u) {
         case Type::ortho_steric_of_conditions: return {0, s.ortho_steric_of_conditions_sd};
         case Type::acceptor_para: return s.acceptor_para;
         case Type::kind_residual: return {0, s.kind_residual_sd[a][b]};
-        case Type::common_residual: return {0, s.common_residual_sd[kind()]};
+        case Type::common_residual: return {0, own() * s.common_residual_sd[kind()]};
         case Type::residual: {
             const auto& c = group_constants(s, u.a);
             const double sigma_sd = u.b == meta ? c.sd_meta : c.sd_para;
-            double sd = std::hypot(s.residual_sd[static_cast<std::size_t>(c.kind)][b], s.rho.mean * sigma_sd);
+            double sd = std::hypot(own() * s.residual_sd[static_cast<std::size_t>(c.kind)][b], s.rho.mean * sigma_sd);
             if (u.b == ortho) sd = std::hypot(sd, s.ortho_steric.mean * c.sd_nu);
             return {0, sd};
         }
-        case Type::condition_common: return {0, s.condition_common_sd[kind()]};
-        case Type::condition: return {0, s.condition_sd[kind()][b]};
+        case Type::condition_common: return {0, own() * s.condition_common_sd[kind()]};
+        case Type::condition: return {0, own() * s.condition_sd[kind()][b]};
         case Type::acid_kind: return {0, s.acid_kind_sd[a][b]};
-        case Type::acid_slope: return {0, s.acid_slope_sd[kind()][b]};
+        case Type::acid_slope: return {0, own() * s.acid_slope_sd[kind()][b]};
         case Type::temperature: return s.temperature[b];
-        case Type::temperature_slope: return {0, s.temperature_slope_sd};
+        case Type::temperature_slope: return {0, own() * s.temperature_slope_sd};
         case Type::correction: return s.correction[a];
         case Type::discrepancy: return {0, s.discrepancy_sd};
         case Type::discrepancy_of_conditions: return {0, s.discrepancy_of_conditions_sd};
@@ -188,20 +198,21 @@ void add_contribution(const Settings& s, const Conditions& conditions, int group
         form.push_back({{Type::ortho_steric_of_conditions, reaction, 0, 0}, w * c.nu});
     }
     form.push_back({{Type::kind_residual, c.kind, relation, 0}, scaled});
-    form.push_back({{Type::common_residual, group, 0, 0}, scaled});
-    form.push_back({{Type::residual, group, relation, 0}, scaled});
-    form.push_back({{Type::condition_common, group, 0, reaction}, w});
-    form.push_back({{Type::condition, group, relation, reaction}, w});
-    if (s.knowledge->tables.reactions[static_cast<std::size_t>(reaction)].has_acid) {
-        const double stronger = (conditions.acid_percent - s.acid_reference_percent) / 10;
-        form.push_back({{Type::acid_kind, c.kind, relation, 0}, w * stronger});
-        form.push_back({{Type::acid_slope, group, relation, 0}, w * stronger});
-    }
-    if (!s.enthalpic) {
-        const double hotter = (conditions.temperature_C - s.temperature_reference_C) / 10;
-        form.push_back({{Type::temperature, 0, relation, 0}, weight * hotter});
-        form.push_back({{Type::temperature_slope, group, relation, 0}, weight * hotter});
-    }
+    const bool has_acid = s.knowledge->tables.reactions[static_cast<std::size_t>(reaction)].has_acid;
+    const double stronger = has_acid ? (conditions.acid_percent - s.acid_reference_percent) / 10 : 0;
+    const double hotter = s.enthalpic ? 0 : (conditions.temperature_C - s.temperature_reference_C) / 10;
+    if (has_acid) form.push_back({{Type::acid_kind, c.kind, relation, 0}, w * stronger});
+    if (!s.enthalpic) form.push_back({{Type::temperature, 0, relation, 0}, weight * hotter});
+    const auto add_group = [&](int member) {
+        form.push_back({{Type::common_residual, member, 0, 0}, scaled});
+        form.push_back({{Type::residual, member, relation, 0}, scaled});
+        form.push_back({{Type::condition_common, member, 0, reaction}, w});
+        form.push_back({{Type::condition, member, relation, reaction}, w});
+        if (has_acid) form.push_back({{Type::acid_slope, member, relation, 0}, w * stronger});
+        if (!s.enthalpic) form.push_back({{Type::temperature_slope, member, relation, 0}, weight * hotter});
+    };
+    add_group(c.head);
+    if (c.head != group) add_group(group);
 }
 
 double correction_count(const Settings& s, std::size_t which, const RingGroups& groups, int position) {
@@ -239,8 +250,7 @@ Form site_form(const Settings& s, const Conditions& conditions, const PlacedSite
         const int group = groups[static_cast<std::size_t>(p)];
         if (group < 0 || p == site.position) continue;
         ++substituents;
-        const int apart = std::min((p - site.position + 6) % 6, (site.position - p + 6) % 6);
-        add_contribution(s, conditions, group, static_cast<Relation>(apart - 1), 1, form);
+        add_contribution(s, conditions, group, relation_between(p, site.position), 1, form);
     }
     for (std::size_t which = 0; which < corrections.size(); ++which) {
         if (s.correction[which].sd <= 0) continue;

@@ -21,6 +21,7 @@ enum class Type : std::uint8_t {
     ortho_steric_of_conditions,
     acceptor_para,        // extra of acceptors at para
     kind_residual,        // a: kind, b: relation
+    // of groups: a is the head of a series, shared by its members, or a member's own part
     common_residual,      // a: group; the same at all positions of the ring
     residual,             // a: group, b: relation
     condition_common,     // a: group, c: reaction
@@ -64,6 +65,7 @@ struct GroupConstants {
     int kind = 0;
     double sigma_para = 0, sigma_meta = 0, nu = 0;
     double sd_para = 0, sd_meta = 0, sd_nu = 0;
+    int head = -1;          // of its series: the group it is like, through all steps (itself if none)
     bool assumed = false;   // a stand-in was needed
     std::string source_para, source_meta;
     std::string missing;    // what can't be found even so
@@ -84,6 +86,7 @@ struct Settings {
     double temperature_slope_sd = 0;
     std::array<Prior, corrections.size()> correction{};
     double discrepancy_sd = 0, discrepancy_of_conditions_sd = 0;
+    double own_fraction = 0;  // what a member of a series keeps to itself, of the sd of the series
     std::vector<double> selectivity;  // by reaction: rho of the conditions over rho of the family
     std::vector<GroupConstants> groups;  // by substituent
 };

@@ -76,6 +76,7 @@ std::string step_text(const Tables& tables, const StepAnswer& answer, const Draw
         add_paragraph(out, "  measured          ", "this compound itself, records " + records);
     }
     out += "\n";
+    if (answer.shares.size() == 1) add_paragraph(out, "  note: ", "only one isomer is possible");
     for (const auto& note : answer.notes) add_paragraph(out, "  note: ", note);
     for (const auto& caution : answer.cautions) add_paragraph(out, "  caution: ", caution.text);
     return out;

@@ -52,7 +52,7 @@ Reaction reaction_of(const Record& record) {
 }
 
 State state_of(const Record& record) {
-    return {record.text("reaction"),
+    return {split_at_blanks(record.text("reactions")),
             record.text("group"),
             record.text("state"),
             number_or_zero(record, "acid_from"),

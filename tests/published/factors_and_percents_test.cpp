@@ -9,7 +9,7 @@
 #include <string>
 #include <vector>
 
-#include "ask.hpp"
+#include "named.hpp"
 
 namespace isotally {
 namespace {
@@ -73,13 +73,10 @@ std::string label(const Paper& paper) {
 
 /// The free positions of the ring as the library finds them, in the order ortho, meta, para.
 std::vector<PlacedSite> positions_of(const Paper& paper) {
-    const auto& tables = known().tables;
-    const auto arene = parse_arene(tables, known().groups, smiles_of(paper.substrate));
-    const auto& reaction = tables.reactions.at(static_cast<std::size_t>(find_reaction(tables, paper.reaction)));
-    const auto& found = std::get<Arene>(arene);
-    const auto placed = placed_sites(found, sites(found, reaction.new_group));
+    const auto ring = arene(named(paper.substrate));
+    const auto placed = placed_sites(ring, sites(ring, reaction_row(paper.reaction).new_group));
     std::vector<PlacedSite> ordered(3);
-    const auto& groups = found.rings.at(0).groups;
+    const auto& groups = ring.rings.at(0).groups;
     const auto group = std::find_if(groups.begin(), groups.end(), [](int g) { return g >= 0; }) - groups.begin();
     for (const auto& site : placed) {
         const auto apart = std::abs(group - site.position);
@@ -110,9 +107,8 @@ TEST(PublishedFactors, GiveThePercentagesOfTheSamePaper) {
 TEST(PublishedFactors, GiveTheRelativeRateOfTheSamePaper) {
     for (const auto& paper : papers()) {
         const SiteFactors factors{log10_of(paper.factor), std::vector<double>(9, 0), {}, {}, {}};
-        const auto& tables = known().tables;
-        const auto& family = tables.reactions.at(static_cast<std::size_t>(find_reaction(tables, paper.reaction))).family;
-        const auto drawn = draw_shares(tables, family, positions_of(paper), factors, {.count = 10});
+        const auto& family = reaction_row(paper.reaction).family;
+        const auto drawn = draw_shares(tables(), family, positions_of(paper), factors, {.count = 10});
         EXPECT_NEAR(drawn.relative_rate.value / paper.relative_rate, 1, rounding) << label(paper);
         EXPECT_NEAR(drawn.ortho_para_ratio.value().value, paper.percent[0] / paper.percent[2],
                     2 * rounding * paper.percent[0] / paper.percent[2])
@@ -130,17 +126,16 @@ TEST(PublishedPercentages, GiveTheFactorsOfTheSamePaper) {
     }
 }
 
-/// The model has seen these papers beside all others of the family: where other laboratories found the same, it
-/// holds their factors. Papers of one reaction differ by a fifth in the larger factors, by two in the smallest.
+/// The model has seen these papers beside all others of the family and must still hold their factors. Laboratories
+/// differ by 2-6 points on the larger isomers and by a factor of 2-3 on one below 5 %; for the rate of benzyl chloride
+/// 0.30 and 0.71 stand side by side, a factor of 1.6 to either side of their middle.
 TEST(PublishedFactors, AreHeldByTheModel) {
     for (const auto& paper : papers()) {
-        const auto answer = answered(paper.substrate, paper.reaction, paper.temperature_C);
-        if (answer.shares.empty())
-            continue;
+        const auto answer = step(named(paper.substrate), paper.reaction, at(paper.temperature_C));
         for (const auto& share : answer.shares) {
             const int locant = share.locants.front();
             const auto i = static_cast<std::size_t>(std::min(locant, 8 - locant) - 2);
-            const double allowed = std::log10(paper.percent[i] < 5 ? 2.5 : 1.6);
+            const double allowed = std::log10(paper.percent[i] < 5 ? 3 : 1.6);
             EXPECT_NEAR(share.log10_factor, std::log10(paper.factor[i]), allowed)
                 << label(paper) << ", " << relation_names[i] << ": factor " << std::pow(10, share.log10_factor)
                 << ", published " << paper.factor[i];
@@ -148,7 +143,7 @@ TEST(PublishedFactors, AreHeldByTheModel) {
         const auto percent = by_relation(answer);
         for (std::size_t i = 0; i < 3; ++i)
             EXPECT_NEAR(percent[i].value, paper.percent[i], 6)
-                << label(paper) << ", " << relation_names[i] << " (two good laboratories differ by 2-6 points)";
+                << label(paper) << ", " << relation_names[i];
     }
 }
 
