@@ -53,8 +53,8 @@ void serialize(Archive& ar, ProductShare& x) {
 }
 template <class Archive>
 void serialize(Archive& ar, Measurement& x) {
-    ar(x.id, x.reaction, x.substrate, x.method, x.basis, x.control, x.temperature_C, x.acid_percent, x.products,
-       x.complete, x.use, x.use_reason, x.from);
+    ar(x.id, x.reaction, x.substrate, x.method, x.basis, x.control, x.temperature_C, x.acid_percent,
+       x.products, x.complete, x.use, x.use_reason, x.from);
 }
 template <class Archive>
 void serialize(Archive& ar, RateFigure& x) {
@@ -96,7 +96,8 @@ void serialize(Archive& ar, ObservedRow& x) {
 }
 template <class Archive>
 void serialize(Archive& ar, Observation& x) {
-    ar(x.id, x.compound, x.source, x.status, x.confidence, x.conditions, x.sites, x.rows, x.shared_sd, x.kind);
+    ar(x.id, x.compound, x.source, x.status, x.confidence, x.conditions, x.sites, x.rows, x.shared_sd,
+       x.kind);
 }
 template <class Archive>
 void serialize(Archive& ar, GroupState& x) {

@@ -15,7 +15,8 @@ const Reaction& reaction_of(const Tables& tables, const Conditions& conditions) 
 
 std::optional<double> figure(const Reaction& reaction, const char* quantity) {
     const auto found = reaction.figures.find(quantity);
-    if (found == reaction.figures.end()) return std::nullopt;
+    if (found == reaction.figures.end())
+        return std::nullopt;
     return found->second.value;
 }
 
@@ -28,7 +29,8 @@ bool applies(const std::vector<std::string>& reactions, const Reaction& reaction
 constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-])]-[#6]";
 constexpr const char* nitro_smiles = "*[N+](=O)[O-]";
 /// A sulfo group ortho or para to a hydroxyl or amino group is displaced by nitro, so it counts as one.
-constexpr const char* displaceable_sulfo = "[$([OX2H]),$([NX3;H2,H1;!$(NC=O);!$(NS=O)])]c:[$(c),$(c:c:c)]S(=O)(=O)[OX2H,OX1-]";
+constexpr const char* displaceable_sulfo =
+    "[$([OX2H]),$([NX3;H2,H1;!$(NC=O);!$(NS=O)])]c:[$(c),$(c:c:c)]S(=O)(=O)[OX2H,OX1-]";
 constexpr int most_nitro = 2;
 
 }  // namespace
@@ -39,20 +41,25 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
     if (acid_percent && !reaction.has_acid)
         throw Error(ErrorKind::usage, "option --acid-percent",
                     fmt::format("{} has no sulfuric acid whose strength could be given", reaction.id));
-    Conditions chosen{index, temperature_C.value_or(figure(reaction, "temperature_default_C").value_or(25)), 0};
-    if (reaction.has_acid) chosen.acid_percent = acid_percent.value_or(figure(reaction, "acid_default_percent").value_or(0));
+    Conditions chosen{index, temperature_C.value_or(figure(reaction, "temperature_default_C").value_or(25)),
+                      0};
+    if (reaction.has_acid)
+        chosen.acid_percent = acid_percent.value_or(figure(reaction, "acid_default_percent").value_or(0));
     const auto outside = [&](double value, const char* low, const char* high) {
         return value < figure(reaction, low).value_or(-1e9) || value > figure(reaction, high).value_or(1e9);
     };
     const bool enthalpic = model_figure(tables, reaction.family, "enthalpic").value != 0;
     const char* low = enthalpic ? "temperature_min_C" : "temperature_series_min_C";
     const char* high = enthalpic ? "temperature_max_C" : "temperature_series_max_C";
-    if (!figure(reaction, low)) low = "temperature_min_C", high = "temperature_max_C";
+    if (!figure(reaction, low))
+        low = "temperature_min_C", high = "temperature_max_C";
     if (outside(chosen.temperature_C, low, high))
-        return Refusal{reaction.id, fmt::format("{:g} C lies outside what is known of {} ({:g} to {:g} C); ask inside that "
-                                                "range, or measure",
-                                                chosen.temperature_C, reaction.name, *figure(reaction, low),
-                                                *figure(reaction, high))};
+        return Refusal{
+            reaction.id,
+            fmt::format("{:g} C lies outside what is known of {} ({:g} to {:g} C); ask inside that "
+                        "range, or measure",
+                        chosen.temperature_C, reaction.name, *figure(reaction, low),
+                        *figure(reaction, high))};
     if (reaction.has_acid && outside(chosen.acid_percent, "acid_min_percent", "acid_max_percent")) {
         std::string other;
         for (const auto& candidate : tables.reactions)
@@ -60,9 +67,10 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
                 chosen.acid_percent >= figure(candidate, "acid_min_percent").value_or(1e9) &&
                 chosen.acid_percent <= figure(candidate, "acid_max_percent").value_or(-1e9))
                 other = "; that is " + candidate.id;
-        return Refusal{reaction.id, fmt::format("{:g} % sulfuric acid lies outside {} ({:g} to {:g} %){}",
-                                                chosen.acid_percent, reaction.name, *figure(reaction, "acid_min_percent"),
-                                                *figure(reaction, "acid_max_percent"), other)};
+        return Refusal{reaction.id,
+                       fmt::format("{:g} % sulfuric acid lies outside {} ({:g} to {:g} %){}",
+                                   chosen.acid_percent, reaction.name, *figure(reaction, "acid_min_percent"),
+                                   *figure(reaction, "acid_max_percent"), other)};
     }
     return chosen;
 }
@@ -76,13 +84,18 @@ bool has(const Molecule& molecule, const std::string& smarts, const std::string&
 std::optional<Refusal> decline(const Tables& tables, const Molecule& molecule, const Pattern& nitro_group) {
     const int groups = count_matches(molecule, nitro_group);
     if (groups > most_nitro)
-        return Refusal{"molecule", fmt::format("{} nitro groups in one molecule: isotally declines more than two, whatever "
-                                               "the purpose",
-                                               groups)};
-    if (groups == 0) return std::nullopt;
+        return Refusal{
+            "molecule",
+            fmt::format("{} nitro groups in one molecule: isotally declines more than two, whatever "
+                        "the purpose",
+                        groups)};
+    if (groups == 0)
+        return std::nullopt;
     for (const auto& ban : tables.bans)
         if (ban.id.starts_with("energetic-") && has(molecule, ban.smarts, "bans.csv:" + ban.id))
-            return Refusal{"molecule", fmt::format("nitro together with another energetic group ({}): isotally declines", ban.reason)};
+            return Refusal{"molecule",
+                           fmt::format("nitro together with another energetic group ({}): isotally declines",
+                                       ban.reason)};
     return std::nullopt;
 }
 
@@ -96,39 +109,50 @@ std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, 
                                       const std::vector<Site>& sites) {
     const auto& reaction = reaction_of(tables, conditions);
     const auto nitro_group = read_pattern(nitro, "nitro");
-    if (auto declined = decline(tables, *arene.molecule, *nitro_group)) return declined;
+    if (auto declined = decline(tables, *arene.molecule, *nitro_group))
+        return declined;
     if (reaction.new_group == nitro_smiles) {
         const int nitro_groups = count_matches(*arene.molecule, *nitro_group);
         const int sulfo_groups = count_matches(*arene.molecule, *read_pattern(displaceable_sulfo, "sulfo"));
         if (nitro_groups + sulfo_groups + 1 > most_nitro)
-            return Refusal{reaction.id, fmt::format("{} would bring a third nitro group{}: isotally declines more than two",
-                                                    reaction.name,
-                                                    sulfo_groups > 0
-                                                        ? " (a sulfo group on a phenol or aniline is displaced and counts as one)"
-                                                        : "")};
+            return Refusal{
+                reaction.id,
+                fmt::format("{} would bring a third nitro group{}: isotally declines more than two",
+                            reaction.name,
+                            sulfo_groups > 0
+                                ? " (a sulfo group on a phenol or aniline is displaced and counts as one)"
+                                : "")};
     }
     for (const auto& ban : tables.bans) {
-        if (ban.id.starts_with("energetic-") || !applies(ban.reactions, reaction)) continue;
+        if (ban.id.starts_with("energetic-") || !applies(ban.reactions, reaction))
+            continue;
         const std::string where = "bans.csv:" + ban.id;
-        if (!has(*arene.molecule, ban.smarts, where)) continue;
-        if (!ban.unless.empty() && has(*arene.molecule, ban.unless, where)) continue;
-        return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {}", reaction.name, ban.reason, ban.instead)};
+        if (!has(*arene.molecule, ban.smarts, where))
+            continue;
+        if (!ban.unless.empty() && has(*arene.molecule, ban.unless, where))
+            continue;
+        return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {}", reaction.name,
+                                                ban.reason, ban.instead)};
     }
     for (const auto& site : sites)
-        if (auto declined = decline(tables, *site.molecule, *nitro_group)) return declined;
+        if (auto declined = decline(tables, *site.molecule, *nitro_group))
+            return declined;
     return std::nullopt;
 }
 
 namespace {
 
-/// "its best position is about 10^8 times slower than one of benzene, and the reaction stops at 10^6 times".
+/// "its best position reacts about 10^8 times slower than one of benzene, and the reaction stops at 10^6 ...".
 std::string too_slow(double log10_best, double log10_floor) {
     const auto beside_benzene = [](double log10_factor) {
-        if (std::abs(log10_factor) < 1) return fmt::format("about {:.1g} times as fast as", std::pow(10.0, log10_factor));
-        return fmt::format("about 10^{:.0f} times {} than", std::abs(log10_factor), log10_factor < 0 ? "slower" : "faster");
+        if (std::abs(log10_factor) < 1)
+            return fmt::format("about {:.1g} times as fast as", std::pow(10.0, log10_factor));
+        return fmt::format("about 10^{:.0f} times {} than", std::abs(log10_factor),
+                           log10_factor < 0 ? "slower" : "faster");
     };
-    return fmt::format("its best position reacts {} one of benzene, and the reaction needs a position {} that",
-                       beside_benzene(log10_best), beside_benzene(log10_floor));
+    return fmt::format(
+        "its best position reacts {} one of benzene, and the reaction stops at {} that",
+        beside_benzene(log10_best), beside_benzene(log10_floor));
 }
 
 }  // namespace
@@ -137,63 +161,79 @@ std::optional<Refusal> refuse_below_floor(const Tables& tables, const Conditions
                                           const std::vector<double>& log10_factors) {
     const auto& reaction = reaction_of(tables, conditions);
     const auto floor = figure(reaction, "floor");
-    if (!floor) return std::nullopt;
+    if (!floor)
+        return std::nullopt;
     const double best = *std::max_element(log10_factors.begin(), log10_factors.end());
-    if (best >= std::log10(*floor)) return std::nullopt;
-    return Refusal{reaction.id,
-                   fmt::format("{} does not go on this ring: {}; people {}", reaction.name, too_slow(best, std::log10(*floor)),
-                               reaction.instead)};
+    if (best >= std::log10(*floor))
+        return std::nullopt;
+    return Refusal{reaction.id, fmt::format("{} does not go on this ring: {}; people {}", reaction.name,
+                                            too_slow(best, std::log10(*floor)), reaction.instead)};
 }
 
-std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene, const Conditions& conditions,
-                                         const std::vector<Site>& sites) {
+std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene,
+                                         const Conditions& conditions, const std::vector<Site>& sites) {
     const auto& reaction = reaction_of(tables, conditions);
     std::vector<std::pair<int, ProductCaution>> found;
     for (const auto& caution : tables.cautions) {
-        if (caution.severity == 0 || !applies(caution.reactions, reaction)) continue;
+        if (caution.severity == 0 || !applies(caution.reactions, reaction))
+            continue;
         const std::string where = "cautions.csv:" + caution.code;
-        if (!caution.substrate_smarts.empty() && !has(*arene.molecule, caution.substrate_smarts, where)) continue;
+        if (!caution.substrate_smarts.empty() && !has(*arene.molecule, caution.substrate_smarts, where))
+            continue;
         ProductCaution said{caution.code, caution.text, {}};
         if (!caution.product_smarts.empty()) {
             const auto pattern = read_pattern(caution.product_smarts, where);
             for (const auto& site : sites)
-                if (count_matches(*site.molecule, *pattern) > 0) said.products.push_back(site.product);
-            if (said.products.empty()) continue;
-            if (said.products.size() == sites.size()) said.products.clear();
+                if (count_matches(*site.molecule, *pattern) > 0)
+                    said.products.push_back(site.product);
+            if (said.products.empty())
+                continue;
+            if (said.products.size() == sites.size())
+                said.products.clear();
         }
         found.emplace_back(caution.severity, std::move(said));
     }
-    std::stable_sort(found.begin(), found.end(), [](const auto& a, const auto& b) { return a.first > b.first; });
+    std::stable_sort(found.begin(), found.end(),
+                     [](const auto& a, const auto& b) { return a.first > b.first; });
     std::vector<ProductCaution> cautions;
-    for (auto& entry : found) cautions.push_back(std::move(entry.second));
+    for (auto& entry : found)
+        cautions.push_back(std::move(entry.second));
     return cautions;
 }
 
-std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene, const Conditions& conditions, double relative_rate) {
+std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene,
+                                        const Conditions& conditions, double relative_rate) {
     const auto& tables = knowledge.tables;
     const auto& reaction = reaction_of(tables, conditions);
     std::vector<std::string> notes = arene.notes;
     for (const auto& ring : arene.rings)
         for (const int group : ring.groups) {
             const auto* state = group < 0 ? nullptr : state_of(knowledge, conditions, group);
-            if (!state || state->state == group) continue;
-            const auto note = fmt::format("{} reacts as {} in this medium{}", tables.substituents[static_cast<std::size_t>(group)].name,
-                                          tables.substituents[static_cast<std::size_t>(state->state)].name,
-                                          state->both_forms ? "; a trace of the free form reacts too and shifts the shares" : "");
-            if (std::find(notes.begin(), notes.end(), note) == notes.end()) notes.push_back(note);
+            if (!state || state->state == group)
+                continue;
+            const auto note = fmt::format(
+                "{} reacts as {} in this medium{}", tables.substituents[static_cast<std::size_t>(group)].name,
+                tables.substituents[static_cast<std::size_t>(state->state)].name,
+                state->both_forms ? "; a trace of the free form reacts too and shifts the shares" : "");
+            if (std::find(notes.begin(), notes.end(), note) == notes.end())
+                notes.push_back(note);
         }
-    if (!reaction.note.empty()) notes.push_back(reaction.note);
+    if (!reaction.note.empty())
+        notes.push_back(reaction.note);
     for (const auto& note : tables.cautions)
         if (note.severity == 0 && applies(note.reactions, reaction) &&
-            (note.substrate_smarts.empty() || has(*arene.molecule, note.substrate_smarts, "cautions.csv:" + note.code)))
+            (note.substrate_smarts.empty() ||
+             has(*arene.molecule, note.substrate_smarts, "cautions.csv:" + note.code)))
             notes.push_back(note.text);
     if (const auto limit = figure(reaction, "encounter_limit"); limit && relative_rate > *limit)
-        notes.push_back(fmt::format("the relative rate is that of the ring itself; in this medium encounter holds every ring to about "
+        notes.push_back(fmt::format("the relative rate is that of the ring itself; in this medium encounter "
+                                    "holds every ring to about "
                                     "{:g} times benzene and leaves the shares as they are",
                                     *limit));
     const double fraction = model_figure(tables, reaction.family, "reach_fraction").value;
     if (const auto reach = figure(reaction, "reach"); reach && relative_rate < fraction * *reach)
-        notes.push_back("far slower than what these conditions usually convert: expect to run stronger, hotter or longer");
+        notes.push_back("far slower than what these conditions usually convert: expect to run stronger, "
+                        "hotter or longer");
     return notes;
 }
 

@@ -4,10 +4,10 @@
 
 #include <algorithm>
 #include <nlohmann/json.hpp>
-#include <sstream>
 #include <string>
 #include <vector>
 
+#include "cli/expect.hpp"
 #include "cli/molfiles.hpp"
 #include "cli/process.hpp"
 
@@ -15,70 +15,31 @@ namespace isotally::cli_test {
 namespace {
 
 using Json = nlohmann::json;
-using Words = std::vector<std::string>;
 using ::testing::AllOf;
 using ::testing::ContainsRegex;
 using ::testing::HasSubstr;
 using ::testing::Not;
 using ::testing::StartsWith;
 
-const std::string nitration = "nitration-mixed-acid";
-
-Words step(const std::string& molecule, const Words& options = {}, const std::string& reaction = nitration) {
-    Words words{"step", molecule, "--reaction", reaction};
-    words.insert(words.end(), options.begin(), options.end());
-    return words;
-}
-
-Words lines_of(const std::string& text) {
-    Words lines;
-    std::istringstream in(text);
-    for (std::string line; std::getline(in, line);)
-        lines.push_back(line);
-    return lines;
-}
-
-std::string shown(const Words& words) {
-    std::string text;
-    for (const auto& word : words)
-        text += (text.empty() ? "" : " ") + (word.size() > 60 ? word.substr(0, 60) + "..." : word);
-    return text;
-}
-
-/// A failure or refusal: the status, one sentence on standard error and nothing on standard output.
-Finished expect_failure(int status, const Words& words, const std::string& says = "", const Setting& setting = {}) {
-    const auto got = run(words, setting);
-    EXPECT_TRUE(got.in_time) << shown(words) << ": still running";
-    EXPECT_EQ(got.exit, status) << shown(words) << ": " << got.err << (got.signal ? "ended by a signal" : "");
-    EXPECT_TRUE(got.out.empty()) << shown(words) << ": standard output holds " << got.out.substr(0, 200);
-    EXPECT_EQ(lines_of(got.err).size(), 1u) << shown(words) << ": " << got.err;
-    EXPECT_THAT(got.err, AllOf(StartsWith("isotally: "), HasSubstr(says), Not(HasSubstr("->"))))
-        << shown(words);
-    EXPECT_LT(got.err.size(), 600u) << shown(words);
-    return got;
-}
-
-Finished expect_answer(const Words& words, const Setting& setting = {}) {
-    auto got = run(words, setting);
-    EXPECT_EQ(got.exit, 0) << shown(words) << ": " << got.err;
-    EXPECT_EQ(got.err, "") << shown(words);
-    EXPECT_NE(got.out, "") << shown(words);
-    return got;
-}
-
 // Molecules
 
 TEST(CliMolecule, BrokenSmiles) {
     expect_failure(3, step("Cc1ccccc"), "SMILES character 3");
     expect_failure(3, step("C(c1ccccc1"), "SMILES character 2");
-    for (const char* broken : {"c1ccccc1)", "[", "[C", "Cc1ccccc1[", "C%", "c1cccc1", "F(Cl)(Br)(I)(C)C", "Cc1ccccc1.", "((((", "1", "="})
+    for (const char* broken : {"c1ccccc1)", "[", "[C", "Cc1ccccc1[", "C%", "c1cccc1", "F(Cl)(Br)(I)(C)C",
+                               "Cc1ccccc1.", "((((", "1", "="})
         expect_failure(3, step(broken));
 }
 
 TEST(CliMolecule, BytesOutsideAscii) {
-    expect_failure(3, step("Cc1ccccc1\xE2\x80\x93" "C"), "SMILES character 10");
-    for (const char* bytes : {"\xFF\xFE", "Cc1ccccc1\xE9", "\xCE\xB1", "Cc1ccccc1\n", "Cc1ccccc1\tC", "Cc1ccc\x1B[31mcc1"})
-        EXPECT_THAT(expect_failure(3, step(bytes)).err, Not(HasSubstr("\x1B"))) << "no control character is echoed";
+    expect_failure(3,
+                   step("Cc1ccccc1\xE2\x80\x93"
+                        "C"),
+                   "SMILES character 10");
+    for (const char* bytes :
+         {"\xFF\xFE", "Cc1ccccc1\xE9", "\xCE\xB1", "Cc1ccccc1\n", "Cc1ccccc1\tC", "Cc1ccc\x1B[31mcc1"})
+        EXPECT_THAT(expect_failure(3, step(bytes)).err, Not(HasSubstr("\x1B")))
+            << "no control character is echoed";
 }
 
 TEST(CliMolecule, NothingThere) {
@@ -118,7 +79,7 @@ TEST(CliMolecule, RefusedWithTheReason) {
     expect_failure(1, step("Cc1ccccc1.Clc1ccccc1"));
     expect_failure(1, step("[2H]c1ccccc1"), "isotope");
     expect_failure(1, step("Cc1c([N+](=O)[O-])cc([N+](=O)[O-])cc1[N+](=O)[O-]"), "more than two");
-    expect_failure(1, step("nitrobenzene", {"--quiet"}, "acetylation-lewis-acid"), "instead");
+    expect_failure(1, step("nitrobenzene", {"--quiet"}, "acetylation-lewis-acid"), "people acylate");
 }
 
 TEST(CliMolecule, Molfiles) {
@@ -164,8 +125,8 @@ TEST(CliUse, WithoutAReactionThoseThatGoAreListed) {
     const auto got = run({"step", "nitrobenzene"});
     EXPECT_EQ(got.exit, 2);
     EXPECT_EQ(got.out, "");
-    EXPECT_THAT(got.err, AllOf(StartsWith("isotally: "), HasSubstr("nitration-strong-acid"), HasSubstr("1,3-dinitrobenzene"),
-                               Not(HasSubstr("acetylation-lewis-acid"))));
+    EXPECT_THAT(got.err, AllOf(StartsWith("isotally: "), HasSubstr("nitration-strong-acid"),
+                               HasSubstr("1,3-dinitrobenzene"), Not(HasSubstr("acetylation-lewis-acid"))));
     for (std::size_t i = 1; i < lines_of(got.err).size(); ++i)
         EXPECT_THAT(lines_of(got.err)[i], ContainsRegex("^ +[a-z-]+ +[0-9]+ % "));
 }
@@ -190,6 +151,10 @@ TEST(CliUse, ConditionsOutsideWhatIsKnown) {
     expect_failure(1, step("toluene", {"--acid-percent", "150"}));
     expect_failure(1, step("toluene", {"--temperature", "250"}, "sulfonation-sulfuric-acid"));
     expect_failure(2, step("toluene", {"--acid-percent", "80"}, "bromination-lewis-acid"), "--acid-percent");
+}
+
+std::string tail_of(const std::string& text) {
+    return text.substr(text.size() - std::min<std::size_t>(text.size(), 40));
 }
 
 TEST(CliUse, FailuresInJson) {
@@ -217,14 +182,16 @@ TEST(CliUse, FailuresInJson) {
         const auto got = run(words);
         EXPECT_EQ(got.exit, exit) << shown(words);
         const auto document = Json::parse(got.out, nullptr, false);
-        ASSERT_TRUE(document.is_object()) << shown(words) << ": " << got.out;
+        EXPECT_TRUE(document.is_object()) << shown(words) << ": no document on standard output: " << got.out;
+        if (!document.is_object())
+            continue;
         EXPECT_EQ(document.value("format", ""), "isotally.error.1") << shown(words);
         EXPECT_EQ(document.value("exit", -1), exit) << shown(words);
         EXPECT_EQ(document.value("kind", ""), kind) << shown(words);
         EXPECT_NE(document.value("where", ""), "") << shown(words);
         EXPECT_NE(document.value("message", ""), "") << shown(words);
         EXPECT_THAT(got.err, StartsWith("isotally: ")) << shown(words);
-        EXPECT_THAT(got.err, HasSubstr(lines_of(document.value("message", "")).at(0).substr(0, 40))) << shown(words);
+        EXPECT_THAT(got.err, HasSubstr(tail_of(document.value("message", "")))) << shown(words);
     }
 }
 
@@ -232,7 +199,8 @@ TEST(CliUse, HelpAndVersion) {
     for (const Words& words : {Words{"--help"}, Words{"-h"}, Words{"step", "--help"}}) {
         const auto help = expect_answer(words).out;
         EXPECT_THAT(help, HasSubstr("Quote every SMILES")) << shown(words);
-        for (std::size_t at = help.find("c1cccc"); at != std::string::npos; at = help.find("c1cccc", at + 1)) {
+        for (std::size_t at = help.find("c1cccc"); at != std::string::npos;
+             at = help.find("c1cccc", at + 1)) {
             const auto start = help.find_last_of(" \n(", at) + 1;
             EXPECT_EQ(help[start], '\'') << shown(words) << ": " << help.substr(start, 30);
         }
@@ -273,21 +241,30 @@ TEST(CliAnswer, SameBytesWhateverTheEnvironment) {
         const auto words = step("COc1ccccc1", options);
         const auto answer = expect_answer(words).out;
         EXPECT_EQ(expect_answer(words).out, answer) << "twice";
-        for (const char* locale : {"C", "POSIX", "C.UTF-8", "de_DE.UTF-8", "tr_TR.UTF-8", "fa_IR", "nonsense"})
-            EXPECT_EQ(expect_answer(words, {.environment = {{"LC_ALL", locale}, {"LANG", locale}}}).out, answer) << locale;
+        for (const char* locale :
+             {"C", "POSIX", "C.UTF-8", "de_DE.UTF-8", "tr_TR.UTF-8", "fa_IR", "nonsense"})
+            EXPECT_EQ(expect_answer(words, {.environment = {{"LC_ALL", locale}, {"LANG", locale}}}).out,
+                      answer)
+                << locale;
         for (const char* zone : {"UTC", "Asia/Kolkata", "Pacific/Kiritimati", "nonsense"})
             EXPECT_EQ(expect_answer(words, {.environment = {{"TZ", zone}}}).out, answer) << zone;
-        EXPECT_EQ(expect_answer(words, {.environment = {{"NO_COLOR", "1"}, {"TERM", "dumb"}, {"COLUMNS", "20"}}}).out, answer);
+        EXPECT_EQ(
+            expect_answer(words, {.environment = {{"NO_COLOR", "1"}, {"TERM", "dumb"}, {"COLUMNS", "20"}}})
+                .out,
+            answer);
     }
-    EXPECT_NE(expect_answer(step("anisole", {"--json"})).out, expect_answer(step("anisole", {"--json", "--seed", "2"})).out);
+    EXPECT_NE(expect_answer(step("anisole", {"--json"})).out,
+              expect_answer(step("anisole", {"--json", "--seed", "2"})).out);
 }
 
 TEST(CliList, AnswersInOrder) {
-    const std::string input = "\xEF\xBB\xBF" "Cc1ccccc1 from the store room\r\n"
+    const std::string input = "\xEF\xBB\xBF"
+                              "Cc1ccccc1 from the store room\r\n"
                               "\n"
                               "c1ccc2ccccc2c1\tfused\n"
                               "Cc1ccccc broken\n"
-                              "Cc1ccccc1\xE2\x80\x93\n" + std::string("C\0C\n", 4) + std::string(100000, 'C') +
+                              "Cc1ccccc1\xE2\x80\x93\n" +
+                              std::string("C\0C\n", 4) + std::string(100000, 'C') +
                               "\n   \r\n"
                               "Clc1ccccc1";
     const auto got = run(step("-"), {.input = input});
@@ -299,7 +276,8 @@ TEST(CliList, AnswersInOrder) {
     for (std::size_t i = 0; i < lines.size(); ++i) {
         const auto document = Json::parse(lines[i], nullptr, false);
         ASSERT_TRUE(document.is_object()) << lines[i];
-        EXPECT_EQ(document["format"], exits[i] ? "isotally.error.1" : "isotally.step.1") << lines[i].substr(0, 300);
+        EXPECT_EQ(document["format"], std::string(exits[i] ? "isotally.error.1" : "isotally.step.1"))
+            << lines[i].substr(0, 300);
         if (exits[i] == 0)
             continue;
         EXPECT_EQ(document["exit"], exits[i]) << lines[i];
@@ -342,8 +320,9 @@ TEST(CliOutput, AReaderThatGoesAway) {
 
 TEST(CliOutput, ADeviceThatIsFull) {
     const Setting full{.out_file = "/dev/full"};
-    for (const Words& words : {step("toluene"), step("toluene", {"--json"}), step("toluene", {"--csv"}), Words{"--version"},
-                               Words{"--help"}, Words{"tables"}, Words{"tables", "sources", "--json"}})
+    for (const Words& words :
+         {step("toluene"), step("toluene", {"--json"}), step("toluene", {"--csv"}), Words{"--version"},
+          Words{"--help"}, Words{"tables"}, Words{"tables", "sources", "--json"}})
         expect_failure(5, words, "standard output", full);
     Setting list = full;
     list.input = "Cc1ccccc1\n";
@@ -381,7 +360,8 @@ TEST(CliTables, AnExportGivesTheSameBytes) {
     const Folder folder;
     const std::string copy = folder / "copy";
     ASSERT_EQ(run({"tables", "--export", copy}).exit, 0);
-    for (const char* reaction : {"nitration-mixed-acid", "bromination-lewis-acid", "sulfonation-sulfuric-acid"})
+    for (const char* reaction :
+         {"nitration-mixed-acid", "bromination-lewis-acid", "sulfonation-sulfuric-acid"})
         for (const char* molecule : {"toluene", "CC(=O)Nc1ccccc1", "COc1ccc(Cl)cc1"})
             for (const char* form : {"--json", "--csv"}) {
                 const auto built_in = run(step(molecule, {form}, reaction));

@@ -8,129 +8,12 @@
 #include <map>
 
 #include "knowledge.hpp"
+#include "small_family.hpp"
 
 namespace isotally {
 namespace {
 
 using testing::ElementsAre;
-
-// A family of two reactions and four groups, every figure invented.
-constexpr double rho_mean = -6.5, sigma_sd = 0.02;
-
-struct Constants {
-    double para, meta, nu;
-};
-const std::map<std::string, Constants> constants_of{{"Me", {-0.31, -0.07, 0.52}},
-                                                    {"NO2", {0.79, 0.67, 1.39}}};
-
-Substituent small_group(const std::string& id, const std::string& smiles, const std::string& kind) {
-    Substituent out;
-    out.id = out.name = id;
-    out.smiles = smiles;
-    out.kind = kind;
-    const auto known = constants_of.find(id);
-    if (known == constants_of.end())
-        return out;
-    Provenance from;
-    from.source = "constants";
-    out.constants = {{"sigma_p_plus", {known->second.para, sigma_sd, from}},
-                     {"sigma_m_plus", {known->second.meta, sigma_sd, from}},
-                     {"charton_nu", {known->second.nu, sigma_sd, from}}};
-    return out;
-}
-
-Measurement small_record(const std::string& id, const std::string& reaction, const std::string& substrate,
-                         const std::vector<ProductShare>& products, bool complete,
-                         const std::string& use = "yes") {
-    Measurement out;
-    out.id = id;
-    out.reaction = reaction;
-    out.substrate = substrate;
-    out.products = products;
-    out.complete = complete;
-    out.use = use;
-    out.from.source = "paper of " + id;
-    out.from.status = "invented";
-    return out;
-}
-
-constexpr const char* ortho_nitrotoluene = "Cc1ccccc1[N+](=O)[O-]";
-
-Tables small_tables() {
-    Tables out;
-    out.substituents = {small_group("Me", "*C", "alkyl"), small_group("NO2", "*[N+](=O)[O-]", "acceptor"),
-                        small_group("Et", "*CC", "alkyl"), small_group("Cl", "*Cl", "halogen")};
-    out.substituents[2].like = "Me";
-    out.substituents[3].constants = out.substituents[0].constants;
-    Reaction one;
-    one.id = "one";
-    one.family = "nitration";
-    one.new_group = "*[N+](=O)[O-]";
-    Reaction two = one;
-    two.id = "two";
-    two.figures["selectivity"].value = 0.8;
-    out.reactions = {one, two};
-    const std::map<std::string, std::pair<double, double>> figures{
-        {"rho", {rho_mean, 0.8}},
-        {"ortho_offset", {0.5, 0.4}},
-        {"ortho_steric", {-1.2, 0.4}},
-        {"ortho_sigma", {1.0, 0.8}},
-        {"acceptor_para", {-0.5, 0.5}},
-        {"rho_of_conditions_sd", {0.3, 0}},
-        {"ortho_offset_of_conditions_sd", {0.15, 0}},
-        {"ortho_steric_of_conditions_sd", {0.1, 0}},
-        {"kind_residual_sd", {0.15, 0}},
-        {"common_residual_sd", {0.4, 0}},
-        {"residual_sd", {0.2, 0}},
-        {"residual_sd:ortho", {0.3, 0}},
-        {"condition_common_sd", {0.25, 0}},
-        {"condition_sd", {0.12, 0}},
-        {"acid_slope_sd", {0.1, 0}},
-        {"acid_kind_sd", {0.1, 0}},
-        {"enthalpic", {1, 0}},
-        {"temperature_reference_C", {25, 0}},
-        {"acid_reference_percent", {80, 0}},
-        {"correction:flanked", {-0.3, 0.15}},
-        {"discrepancy_sd", {0.2, 0}},
-        {"discrepancy_of_conditions_sd", {0.08, 0}},
-        {"sigma_stand_in_sd", {0.1, 0}},
-        {"like_sd", {0.05, 0}},
-        {"laboratory_sd_points", {1.2, 0}},
-        {"laboratory_sd_log10", {0.03, 0}},
-        {"laboratory_sd_minor_log10", {0.3, 0}},
-        {"weak_widening", {2, 0}},
-        {"bound_fraction", {0.35, 0}},
-        {"bound_sd", {0.5, 0}},
-        {"unlisted_percent", {1, 0}},
-        {"stray_percent", {3, 0}},
-        {"stray_sd", {0.7, 0}},
-        {"ortho_para_rule_sd", {0.3, 0}}};
-    for (const auto& [quantity, figure] : figures)
-        out.model.push_back({"all", quantity, {figure.first, figure.second, {}}});
-    out.measurements = {
-        small_record(
-            "toluene", "one", "Cc1ccccc1",
-            {{ortho_nitrotoluene, 57, {}}, {"Cc1cccc(N(=O)=O)c1", 3, 1.5}, {"Cc1ccc(N(=O)=O)cc1", 40, {}}},
-            true),
-        small_record("nitrobenzene", "two", "O=[N+]([O-])c1ccccc1",
-                     {{"O=N(=O)c1ccccc1N(=O)=O", 6, {}}, {"O=N(=O)c1cccc(N(=O)=O)c1", 93, {}}}, false,
-                     "weak"),
-        small_record("nitrotoluene", "one", ortho_nitrotoluene,
-                     {{"Cc1ccc(N(=O)=O)cc1N(=O)=O", 65, {}}, {"Cc1c(N(=O)=O)cccc1N(=O)=O", 34, {}}}, false),
-        small_record("xylene", "one", "Cc1cccc(C)c1",
-                     {{"Cc1cccc(C)c1N(=O)=O", 14, {}}, {"Cc1ccc(N(=O)=O)c(C)c1", 86, {}}}, true)};
-    RateFigure factor;
-    factor.id = "factor";
-    factor.reaction = "two";
-    factor.substrate = "Cc1ccccc1";
-    factor.relation = "para";
-    factor.value = 50;
-    factor.sd_log10 = 0.05;
-    factor.use = "yes";
-    factor.from.source = "paper of factor";
-    out.rates = {factor};
-    return out;
-}
 
 /// The model as the design states it, unknowns by name; solved in the space of the unknowns:
 /// covariance = (P^-1 + H' R^-1 H)^-1, mean = covariance (P^-1 m + H' R^-1 y).
@@ -143,16 +26,16 @@ public:
               const std::string& compound) {
         const double s = reaction == "two" ? 0.8 : 1.0;
         Line line;
-        const auto add = [&](const std::string& name, double weight, double mean, double sd) {
+        const auto add = [&](const std::string& name, double weight, double centre, double sd) {
             line[name] += weight;
-            priors[name] = {mean, sd};
+            priors[name] = {centre, sd};
         };
         for (int away = 1; away <= 5; ++away) {
             const std::string group = groups[static_cast<std::size_t>(away - 1)];
             if (group.empty())
                 continue;
             const std::string place = away % 4 == 1 ? "ortho" : away == 3 ? "para" : "meta";
-            const auto& c = constants_of.at(group);
+            const auto& c = constants_of.at(group == "Et" ? "Me" : group);
             const double sigma = place == "meta" ? c.meta : c.para;
             const std::string kind = group == "NO2" ? "acceptor" : "alkyl";
             add("rho", s * sigma, rho_mean, 0.8);
@@ -167,11 +50,17 @@ public:
             if (place == "para" && kind == "acceptor")
                 add("acceptor at para", s, -0.5, 0.5);
             add("kind " + kind + place, s, 0, 0.15);
-            add("group " + group, s, 0, 0.4);
-            const double own = std::hypot(place == "ortho" ? 0.3 : 0.2, rho_mean * sigma_sd);
-            add("group " + group + place, s, 0, place == "ortho" ? std::hypot(own, 1.2 * sigma_sd) : own);
-            add("conditions " + group + reaction, 1, 0, 0.25);
-            add("conditions " + group + place + reaction, 1, 0, 0.12);
+            const auto add_group = [&](const std::string& member, double part, double constant_sd) {
+                add("group " + member, s, 0, part * 0.4);
+                double own = std::hypot(part * (place == "ortho" ? 0.3 : 0.2), rho_mean * constant_sd);
+                own = place == "ortho" ? std::hypot(own, 1.2 * constant_sd) : own;
+                add("group " + member + place, s, 0, own);
+                add("conditions " + member + reaction, 1, 0, part * 0.25);
+                add("conditions " + member + place + reaction, 1, 0, part * 0.12);
+            };
+            add_group(group == "Et" ? "Me" : group, 1, sigma_sd);
+            if (group == "Et")  // of the series of methyl: shares its unknowns and keeps a part to itself
+                add_group("Et", 0.35, std::hypot(sigma_sd, 0.05));
         }
         if (!groups[0].empty() && !groups[4].empty())
             add("flanked", 1, -0.3, 0.15);
@@ -265,7 +154,7 @@ std::vector<Textbook::Line> forms(Textbook& book, const Knowledge& small, const 
                     small.tables.substituents[static_cast<std::size_t>(group)].id;
             carried += group >= 0;
         }
-        out.push_back(book.site(around, reaction, carried > 1 ? site.product : ""));
+        out.push_back(book.site(around, reaction, carried > 1 ? read.smiles + " to " + site.product : ""));
     }
     return out;
 }
@@ -298,16 +187,19 @@ TEST(FactorsTextbook, PosteriorIsThatOfTheTextbook) {
     book.observe(
         {Textbook::minus(at({"NO2", "", "", "", ""}, "two", ""), at({"", "NO2", "", "", ""}, "two", ""))},
         {ratio(6, 2, 93, 2)}, with_shared({2 * share_sd(6)}, 2 * share_sd(93)));
-    const auto product = [](const char* smiles) { return canonical_smiles(smiles, "test"); };
-    book.observe(
-        {Textbook::minus(at({"Me", "NO2", "", "", ""}, "one", product("Cc1c(N(=O)=O)cccc1N(=O)=O")),
-                         at({"", "NO2", "Me", "", ""}, "one", product("Cc1ccc(N(=O)=O)cc1N(=O)=O")))},
-        {ratio(34, 1, 65, 1)}, with_shared({share_sd(34)}, share_sd(65)));
-    const auto four = at({"Me", "", "Me", "", ""}, "one", product("Cc1ccc(N(=O)=O)c(C)c1"));
-    book.observe(
-        {Textbook::minus(at({"Me", "", "", "", "Me"}, "one", product("Cc1cccc(C)c1N(=O)=O")), four),
-         Textbook::minus(at({"", "Me", "", "Me", ""}, "one", product("Cc1cc(C)cc(N(=O)=O)c1")), four)},
-        {ratio(14, 1, 86, 2), ratio(0.35, 1, 86, 2)}, with_shared({share_sd(14), 0.5}, share_sd(86)));
+    const auto way = [](const char* substrate, const char* product) {
+        return canonical_smiles(substrate, "test") + " to " + canonical_smiles(product, "test");
+    };
+    const auto six =
+        at({"Me", "NO2", "", "", ""}, "one", way(ortho_nitrotoluene, "Cc1c(N(=O)=O)cccc1N(=O)=O"));
+    const auto four =
+        at({"", "NO2", "Me", "", ""}, "one", way(ortho_nitrotoluene, "Cc1ccc(N(=O)=O)cc1N(=O)=O"));
+    book.observe({Textbook::minus(six, four)}, {ratio(34, 1, 65, 1)},
+                 with_shared({share_sd(34)}, share_sd(65)));
+    const auto inner = at({"Me", "", "", "", "Me"}, "one", way("Cc1cccc(C)c1", "Cc1cccc(C)c1N(=O)=O"));
+    const auto outer = at({"Me", "", "Me", "", ""}, "one", way("Cc1cccc(C)c1", "Cc1ccc(N(=O)=O)c(C)c1"));
+    book.observe({Textbook::minus(inner, outer)}, {ratio(14, 1, 86, 2)},
+                 with_shared({share_sd(14)}, share_sd(86)));
     book.observe({at({"", "", "Me", "", ""}, "two", "")}, {std::log10(50)}, with_shared({0.05}, 0));
 
     const std::vector<std::pair<std::string, std::string>> questions{{"Cc1ccccc1", "one"},
@@ -318,6 +210,7 @@ TEST(FactorsTextbook, PosteriorIsThatOfTheTextbook) {
                                                                      {"Cc1ccc(N(=O)=O)cc1", "one"},
                                                                      {"Cc1cccc(C)c1", "two"},
                                                                      {"Cc1cc(C)cc(N(=O)=O)c1", "one"},
+                                                                     {"CCc1ccccc1", "two"},
                                                                      {"c1ccccc1", "one"}};
     std::vector<std::vector<Textbook::Line>> asked;
     for (const auto& [smiles, reaction] : questions)
@@ -347,16 +240,57 @@ TEST(FactorsTextbook, EvidenceOfEachFigure) {
                      {{"Cc1ccc(N(=O)=O)cc1Cl", 60, {}}, {"Cc1cccc(N(=O)=O)c1Cl", 40, {}}}, false));
     const Knowledge known = prepare(small);
     const auto fitted = fit_family(known, "nitration");
-    const auto of = [&](const FamilyModel& by, const std::string& smiles) {
-        return small_factors(known, by, smiles, "one").contributions.at(0).at(0);
+    const auto of = [&](const FamilyModel& by, const std::string& smiles, Relation relation) {
+        for (const auto& site : small_factors(known, by, smiles, "one").contributions)
+            if (site.at(0).relation == relation)
+                return site.at(0);
+        throw std::logic_error("no such position");
     };
-    EXPECT_EQ(of(*fitted, "Cc1ccccc1").evidence, "measured");
-    EXPECT_THAT(of(*fitted, "Cc1ccccc1").sources, ElementsAre("paper of toluene", "paper of factor"));
-    EXPECT_EQ(of(*fitted, "Clc1ccccc1").evidence, "inferred") << "seen beside another group only";
-    EXPECT_EQ(of(*fitted, "CCc1ccccc1").evidence, "assumed") << "no constants of its own";
-    EXPECT_THAT(of(*fitted, "CCc1ccccc1").sources, ElementsAre("constants"));
-    EXPECT_EQ(of(*leave_out(*fitted, "Cc1ccccc1Cl"), "Clc1ccccc1").evidence, "correlated");
+    EXPECT_EQ(of(*fitted, "Cc1ccccc1", meta).evidence, "measured");
+    EXPECT_THAT(of(*fitted, "Cc1ccccc1", meta).sources, ElementsAre("paper of toluene"));
+    EXPECT_THAT(of(*fitted, "Cc1ccccc1", para).sources, ElementsAre("paper of toluene", "paper of factor"));
+    EXPECT_EQ(of(*fitted, "Clc1ccccc1", ortho).evidence, "inferred") << "seen beside another group only";
+    EXPECT_EQ(of(*fitted, "Clc1ccccc1", meta).evidence, "inferred");
+    EXPECT_EQ(of(*fitted, "Clc1ccccc1", para).evidence, "correlated") << "never seen at para";
+    EXPECT_EQ(of(*leave_out(*fitted, "Cc1ccccc1Cl"), "Clc1ccccc1", ortho).evidence, "correlated");
+    EXPECT_EQ(of(*fitted, "CCc1ccccc1", para).evidence, "assumed") << "no constants of its own";
+    EXPECT_THAT(of(*fitted, "CCc1ccccc1", para).sources, ElementsAre("constants"));
     EXPECT_THAT(small_factors(known, *fitted, "Cc1ccccc1", "two").measured_by, ElementsAre("toluene"));
+}
+
+TEST(FactorsTextbook, BoundCutsOffWhatLiesAboveIt) {
+    // o-xylene, "only the 4-isomer": the other has at most 5 %. The truth by quadrature: the prior of the
+    // log-ratio times a soft step (normal distribution function, sd 0.3) at the bound.
+    Tables small = small_tables();
+    small.measurements.clear();
+    small.rates.clear();
+    const auto moments = [](const Knowledge& known) {
+        const auto found = small_factors(known, *fit_family(known, "nitration"), "Cc1ccccc1C", "one");
+        const auto read = answered(parse_arene(known.tables, known.groups, "Cc1ccccc1C"), "o-xylene");
+        const bool first =
+            sites(read, "*[N+](=O)[O-]")[0].product == canonical_smiles("Cc1cccc(N(=O)=O)c1C", "test");
+        const double mean = found.mean[0] - found.mean[1];
+        const auto& c = found.covariance;
+        return std::pair(first ? mean : -mean, c[0] + c[3] - 2 * c[1]);
+    };
+    const auto [before, variance] = moments(prepare(small));
+    small.measurements = {
+        small_record("xylene", "one", "Cc1ccccc1C", {{"Cc1ccc(N(=O)=O)cc1C", 100, {}}}, false, "bound")};
+    const auto [mean, spread] = moments(prepare(small));
+    const double limit = std::log10(5.0 / 2) - std::log10(100.0 / 2);
+    double mass = 0, first = 0, second = 0;
+    for (int i = -40000; i <= 40000; ++i) {
+        const double x = before + i * 2e-4;
+        const double w = std::exp(-0.5 * (x - before) * (x - before) / variance) *
+                         std::erfc((x - limit) / 0.3 / std::sqrt(2));
+        mass += w;
+        first += w * x;
+        second += w * x * x;
+    }
+    first /= mass;
+    ASSERT_LT(first, before - 0.3) << "the bound must matter here";
+    EXPECT_NEAR(mean, first, 0.02);
+    EXPECT_NEAR(spread, second / mass - first * first, 0.02);
 }
 
 TEST(FactorsTextbook, RateIsReproducedWhereNothingElseIsKnown) {

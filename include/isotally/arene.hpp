@@ -32,18 +32,18 @@ struct Ring {
 struct Molecule;  // the toolkit's molecule
 
 struct Arene {
-    std::string smiles;               // canonical, as fed
-    std::vector<Ring> rings;          // every benzene ring; order and start follow the canonical form
-    std::vector<std::string> notes;   // counter-ions taken off ...
+    std::string smiles;              // canonical, as fed
+    std::vector<Ring> rings;         // every benzene ring; order and start follow the canonical form
+    std::vector<std::string> notes;  // counter-ions taken off ...
     std::shared_ptr<const Molecule> molecule;  // not to be shared between threads
 };
 
 /// Positions that give the same product.
 struct Site {
-    int ring = 0;                 // ring of the first of them
-    std::vector<int> positions;   // positions on that ring
-    int multiplicity = 0;         // all equivalent positions of the molecule
-    std::string product;          // canonical SMILES
+    int ring = 0;                              // ring of the first of them
+    std::vector<int> positions;                // positions on that ring
+    int multiplicity = 0;                      // all equivalent positions of the molecule
+    std::string product;                       // canonical SMILES
     std::shared_ptr<const Molecule> molecule;  // of the product
 };
 

@@ -17,10 +17,10 @@ struct CheckedIsomer {
 
 struct CheckedRecord {
     std::string id, reaction, substrate, use, source, status;
-    int groups = 0;                 // on the ring before the step
-    bool complete = false;          // all isomers are given: counts for the mean error
+    int groups = 0;         // on the ring before the step
+    bool complete = false;  // all isomers are given: counts for the mean error
     bool leading_right = false;
-    double log_score = 0;           // ln of the predictive density of the observed log10-ratios, per ratio
+    double log_score = 0;  // ln of the predictive density of the observed log10-ratios, per ratio
     std::vector<CheckedIsomer> isomers;
 };
 
@@ -32,9 +32,10 @@ struct Scores {
            log_score = 0;
 };
 
-/// All literature records of a family with use other than no (rows of practice teach but are not scored), each
-/// predicted without any measurement on its compound.
-std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family, const Draws& draws);
+/// All literature records of a family with use other than no (rows of practice teach but are not scored),
+/// each predicted without any measurement on its compound.
+std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family,
+                                        const Draws& draws);
 
 /// Errors, coverage and width are over the isomers observed or predicted above 1 % in complete records; the
 /// leading isomer counts over all records.

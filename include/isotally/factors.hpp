@@ -24,9 +24,9 @@ constexpr Relation relation_between(int one, int other) {
 
 /// Conditions of one step.
 struct Conditions {
-    int reaction = -1;          // index in Tables::reactions
+    int reaction = -1;  // index in Tables::reactions
     double temperature_C = 25;
-    double acid_percent = 0;    // sulfuric acid, weight percent; only where the reaction has it
+    double acid_percent = 0;  // sulfuric acid, weight percent; only where the reaction has it
 };
 
 /// A position of a ring: the groups as they are fed and which of the six positions it is.
@@ -34,7 +34,7 @@ struct PlacedSite {
     RingGroups groups{};
     int position = 0;
     int multiplicity = 1;
-    int tag = 0;                // ring * 6 + first position: which site of the compound this is
+    int tag = 0;  // ring * 6 + first position: which site of the compound this is
 };
 
 /// One linear observation of the sites of a compound: sum of weight * log10 F = value + noise.
@@ -42,8 +42,8 @@ struct ObservedRow {
     enum class Kind { figure, at_most, rule };
     std::vector<std::pair<int, double>> weights;  // index in Observation::sites, weight
     double value = 0;
-    double noise_sd = 0;        // its own
-    Kind kind = Kind::figure;   // at_most: known only as "not more than"; rule: of the trade, no measurement
+    double noise_sd = 0;       // its own
+    Kind kind = Kind::figure;  // at_most: known only as "not more than"; rule: of the trade, no measurement
 };
 
 /// A record of the tables, resolved onto the sites of its compound.
@@ -52,7 +52,7 @@ struct Observation {
     Conditions conditions;
     std::vector<PlacedSite> sites;
     std::vector<ObservedRow> rows;
-    double shared_sd = 0;       // noise common to its rows (the reference isomer of log-ratios)
+    double shared_sd = 0;  // noise common to its rows (the reference isomer of log-ratios)
     enum class Kind { shares, factor, rate, rule } kind = Kind::shares;
 };
 
@@ -67,7 +67,7 @@ struct GroupState {
 struct Knowledge {
     Tables tables;
     GroupIndex groups;
-    std::vector<GroupState> states;     // by reaction, then group
+    std::vector<GroupState> states;  // by reaction, then group
     std::vector<Observation> observations;
 };
 
@@ -100,10 +100,10 @@ std::shared_ptr<const FamilyModel> leave_out(const FamilyModel& model, std::stri
 
 /// What one group adds to log10 F of a site.
 struct Contribution {
-    int substituent = -1;       // in the state in which it reacts
+    int substituent = -1;  // in the state in which it reacts
     Relation relation = ortho;
     double log10_factor = 0, sd = 0;
-    std::string evidence;       // measured, inferred, correlated, assumed
+    std::string evidence;  // measured, inferred, correlated, assumed
     std::vector<std::string> sources;
 };
 
@@ -117,7 +117,8 @@ struct SiteFactors {
     std::vector<double> covariance;  // row-major, sites x sites; the compound's own deviation included
     std::vector<std::vector<Contribution>> contributions;
     std::vector<std::vector<Correction>> corrections;
-    std::vector<std::string> measured_by;  // ids of the isomer distributions of this very compound in this family
+    std::vector<std::string>
+        measured_by;  // ids of the isomer distributions of this very compound in this family
 };
 
 /// How many groups of the tables have each kind of evidence in each family: "nitration, measured" ...

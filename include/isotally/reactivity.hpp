@@ -24,7 +24,8 @@ std::optional<Refusal> decline_molecule(const Tables& tables, std::string_view s
 std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, const Conditions& conditions,
                                       const std::vector<Site>& sites);
 
-/// The floor: refused where the best position of every ring lies below it (log10 F in the state of the groups).
+/// The floor: refused where the best position of every ring lies below it (log10 F in the state of the
+/// groups).
 std::optional<Refusal> refuse_below_floor(const Tables& tables, const Conditions& conditions,
                                           const std::vector<double>& log10_factors);
 
@@ -34,11 +35,12 @@ struct ProductCaution {
 };
 
 /// Cautions of a step, the worst first; the standing one last. `sites`: the products worth a caution.
-std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene, const Conditions& conditions,
-                                         const std::vector<Site>& sites);
+std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene,
+                                         const Conditions& conditions, const std::vector<Site>& sites);
 
-/// What must be said with the figures: reversible, two forms of a group react, slower than the acid reaches ...
-std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene, const Conditions& conditions,
-                                        double relative_rate);
+/// What must be said with the figures: reversible, two forms of a group react, slower than the acid reaches
+/// ...
+std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene,
+                                        const Conditions& conditions, double relative_rate);
 
 }  // namespace isotally

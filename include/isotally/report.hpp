@@ -15,7 +15,8 @@ std::string step_json(const Tables& tables, const StepAnswer& answer, const Draw
 std::string step_csv(const StepAnswer& answer);
 
 /// For reading, at most 100 columns. `assumed` ends the first line ("defaults").
-std::string step_text(const Tables& tables, const StepAnswer& answer, const Draws& draws, const std::string& assumed);
+std::string step_text(const Tables& tables, const StepAnswer& answer, const Draws& draws,
+                      const std::string& assumed);
 
 /// A failure or refusal, format isotally.error.1. `kind` is refused, usage, input, tables, output,
 /// interrupted or defect.

@@ -13,7 +13,7 @@
 namespace isotally {
 
 struct Draws {
-    double level = 0.90;        // 0..1: how often the intervals should hold
+    double level = 0.90;  // 0..1: how often the intervals should hold
     int count = 1000;
     std::uint64_t seed = 1;
 };
@@ -24,9 +24,9 @@ struct Range {
 
 struct IsomerShare {
     Site site;
-    std::vector<int> locants;   // of the substrate's systematic name
+    std::vector<int> locants;  // of the substrate's systematic name
     std::optional<std::string> product_name, product_systematic_name;
-    Range percent;              // share at the posterior mean; what another laboratory would find
+    Range percent;  // share at the posterior mean; what another laboratory would find
     double log10_factor = 0, log10_factor_sd = 0;
     std::vector<Contribution> contributions;
     std::vector<Correction> corrections;
@@ -36,16 +36,18 @@ struct StepAnswer {
     std::string smiles;
     std::optional<std::string> name, systematic_name;
     Conditions conditions;
-    std::vector<IsomerShare> shares;           // by falling percent
-    std::optional<Range> ortho_para_ratio;     // all ortho over all para; rings with exactly one group
-    Range relative_rate;                       // whole molecule, benzene = 1, no encounter limit
-    std::vector<std::string> measured_by;      // isomer distributions of this compound in this family
+    std::vector<IsomerShare> shares;        // by falling percent
+    std::optional<Range> ortho_para_ratio;  // all ortho over all para; rings with exactly one group
+    Range relative_rate;                    // whole molecule, benzene = 1, no encounter limit
+    std::vector<std::string> measured_by;   // isomer distributions of this compound in this family
     std::vector<ProductCaution> cautions;
     std::vector<std::string> notes;
 };
 
-/// Share of product k = n_k F_k / sum_j n_j F_j at the posterior mean of log10 F, in percent (they sum to 100).
-std::vector<double> isomer_percents(const std::vector<PlacedSite>& sites, const std::vector<double>& log10_factors);
+/// Share of product k = n_k F_k / sum_j n_j F_j at the posterior mean of log10 F, in percent (they sum to
+/// 100).
+std::vector<double> isomer_percents(const std::vector<PlacedSite>& sites,
+                                    const std::vector<double>& log10_factors);
 
 /// Intervals of shares by draws of the posterior and of a laboratory's scatter. Columns of `wanted` sums.
 struct ShareDraws {

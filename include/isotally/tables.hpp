@@ -16,12 +16,12 @@ namespace isotally {
 
 /// Where a figure comes from. `status` is seen, memory, practice, derived or invented.
 struct Provenance {
-    std::string source;      // id in sources.json; empty only for status practice and derived
-    std::string locator;     // page, table, row; for derived: the command
+    std::string source;   // id in sources.json; empty only for status practice and derived
+    std::string locator;  // page, table, row; for derived: the command
     std::string status;
     std::string confidence;  // high, medium, low or empty
     std::string note;
-    std::size_t line = 0;    // on which the record begins in its file
+    std::size_t line = 0;  // on which the record begins in its file
 };
 
 struct Figure {
@@ -32,9 +32,10 @@ struct Figure {
 
 /// A group on a benzene ring (a row of substituents.csv).
 struct Substituent {
-    std::string id;         // "NO2"
-    std::string name;       // "nitro"
-    std::string smiles;     // canonical, attachment first written as *: "*[N+](=O)[O-]"; empty for a generic class
+    std::string id;    // "NO2"
+    std::string name;  // "nitro"
+    std::string
+        smiles;  // canonical, attachment first written as *: "*[N+](=O)[O-]"; empty for a generic class
     std::string smarts;     // generic class only: pattern on the group with its attachment as [#0]
     int rank = 0;           // generic classes: the lowest rank that matches wins, ties by id
     std::string like;       // id of the group whose constants stand in where its own are missing
@@ -65,10 +66,10 @@ struct Reaction {
 /// What a medium makes of a group (a row of states.csv).
 struct State {
     std::vector<std::string> reactions;  // reaction ids or families
-    std::string group;      // substituent id, or "kind:acceptor", or "principal:ketone"
-    std::string state;      // substituent id
-    double acid_from = 0, acid_to = 0;  // weight percent; both 0: any
-    std::string both_forms; // yes, minor, no
+    std::string group;                   // substituent id, or "kind:acceptor", or "principal:ketone"
+    std::string state;                   // substituent id
+    double acid_from = 0, acid_to = 0;   // weight percent; both 0: any
+    std::string both_forms;              // yes, minor, no
     Provenance from;
 };
 
@@ -85,9 +86,9 @@ struct Ban {
 /// A caution (a row of cautions.csv), shown when the reaction and the patterns match; worst first.
 struct Caution {
     std::string code;
-    std::vector<std::string> reactions;  // as in Ban
+    std::vector<std::string> reactions;            // as in Ban
     std::string substrate_smarts, product_smarts;  // empty: any
-    int severity = 0;                    // 100 worst
+    int severity = 0;                              // 100 worst
     std::string text;
     Provenance from;
 };
@@ -103,8 +104,8 @@ struct Measurement {
     std::string id, reaction, substrate, method, basis, control;
     std::optional<double> temperature_C, acid_percent;
     std::vector<ProductShare> products;
-    bool complete = true;    // every isomer above about 1 % is listed
-    std::string use;         // yes, weak, partial, bound, no
+    bool complete = true;  // every isomer above about 1 % is listed
+    std::string use;       // yes, weak, partial, bound, no
     std::string use_reason;
     Provenance from;
 };
@@ -112,9 +113,9 @@ struct Measurement {
 /// One partial rate factor (a row of factors.csv) or relative rate (a row of rates.csv, relation empty).
 struct RateFigure {
     std::string id, reaction, substrate;
-    std::string relation;    // ortho, meta, para; empty: whole molecule
+    std::string relation;  // ortho, meta, para; empty: whole molecule
     std::optional<double> temperature_C, acid_percent;
-    double value = 0;        // relative to benzene (one position of it, for a factor)
+    double value = 0;  // relative to benzene (one position of it, for a factor)
     double sd_log10 = 0;
     std::string use, use_reason;
     Provenance from;
@@ -122,14 +123,14 @@ struct RateFigure {
 
 struct Name {
     std::string name, smiles;
-    bool preferred = true;   // printed as well as read
+    bool preferred = true;  // printed as well as read
     Provenance from;
 };
 
 struct Source {
     std::string id;
-    std::string citation;    // one line made from the CSL-JSON record
-    std::string json;        // the record itself
+    std::string citation;  // one line made from the CSL-JSON record
+    std::string json;      // the record itself
 };
 
 /// A row of model.csv: priors and standard deviations of the model, by family ("all": every family).

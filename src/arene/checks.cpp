@@ -23,7 +23,8 @@ std::string polycycle_name(const RDKit::ROMol& mol) {
         } else if (atom->getIsAromatic() && atom->getAtomicNum() != 6) {
             ++hetero;
         }
-    if (hetero == 0 && shared == 2) return "a naphthalene or another fused ring system";
+    if (hetero == 0 && shared == 2)
+        return "a naphthalene or another fused ring system";
     return "a fused ring system";
 }
 
@@ -35,13 +36,16 @@ std::optional<Refusal> refuse_atoms(const RDKit::ROMol& mol) {
         if (atom->getAtomicNum() == 0)
             return Refusal{where, "an atom without an element (*); a whole molecule was expected"};
         if (atom->getIsotope() != 0)
-            return Refusal{where, fmt::format("an isotope ({}{}): rates of labelled rings are not in the tables",
-                                              atom->getIsotope(), atom->getSymbol())};
+            return Refusal{where,
+                           fmt::format("an isotope ({}{}): rates of labelled rings are not in the tables",
+                                       atom->getIsotope(), atom->getSymbol())};
         if (atom->getNumRadicalElectrons() != 0)
-            return Refusal{where, fmt::format("a radical at {}: only closed-shell molecules are known", atom->getSymbol())};
-        if (!is_usual_element(static_cast<unsigned>(atom->getAtomicNum())))
-            return Refusal{where, fmt::format("the element {}: organometallic compounds are not in the tables",
+            return Refusal{where, fmt::format("a radical at {}: only closed-shell molecules are known",
                                               atom->getSymbol())};
+        if (!is_usual_element(static_cast<unsigned>(atom->getAtomicNum())))
+            return Refusal{where,
+                           fmt::format("the element {}: organometallic compounds are not in the tables",
+                                       atom->getSymbol())};
     }
     for (const auto* bond : mol.bonds())
         if (bond->getBondType() != RDKit::Bond::SINGLE && bond->getBondType() != RDKit::Bond::DOUBLE &&
@@ -59,16 +63,20 @@ std::optional<Refusal> refuse_rings(const RDKit::ROMol& mol) {
             aromatic &= mol.getAtomWithIdx(static_cast<unsigned>(atom))->getIsAromatic();
             carbon &= mol.getAtomWithIdx(static_cast<unsigned>(atom))->getAtomicNum() == 6;
         }
-        if (!aromatic) continue;
+        if (!aromatic)
+            continue;
         for (const int atom : ring)
             if (rings.numAtomRings(static_cast<unsigned>(atom)) > 1)
-                return Refusal{"molecule", polycycle_name(mol) + ": factors are known for single benzene rings only"};
+                return Refusal{"molecule",
+                               polycycle_name(mol) + ": factors are known for single benzene rings only"};
         if (!carbon || ring.size() != 6)
-            return Refusal{"molecule", "a hetero ring (such as pyridine or thiophene): its reactivity is not in the "
-                                       "tables, only benzene rings are"};
+            return Refusal{"molecule",
+                           "a hetero ring (such as pyridine or thiophene): its reactivity is not in the "
+                           "tables, only benzene rings are"};
         benzene = true;
     }
-    if (!benzene) return Refusal{"molecule", "no benzene ring in it"};
+    if (!benzene)
+        return Refusal{"molecule", "no benzene ring in it"};
     return std::nullopt;
 }
 

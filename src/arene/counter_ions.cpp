@@ -11,9 +11,12 @@ namespace {
 
 /// Canonical SMILES of what is taken off, and what the note calls it.
 const std::map<std::string, std::string>& counter_ions() {
-    static const std::map<std::string, std::string> known{
-        {"[Na+]", "sodium"},          {"[K+]", "potassium"},       {"[Cl-]", "chloride"},
-        {"Cl", "hydrogen chloride"},  {"O=S(=O)([O-])O", "hydrogen sulfate"}, {"O=S(=O)(O)O", "sulfuric acid"}};
+    static const std::map<std::string, std::string> known{{"[Na+]", "sodium"},
+                                                          {"[K+]", "potassium"},
+                                                          {"[Cl-]", "chloride"},
+                                                          {"Cl", "hydrogen chloride"},
+                                                          {"O=S(=O)([O-])O", "hydrogen sulfate"},
+                                                          {"O=S(=O)(O)O", "sulfuric acid"}};
     return known;
 }
 
@@ -21,14 +24,18 @@ const std::map<std::string, std::string>& counter_ions() {
 void neutralise(RDKit::RWMol& mol) {
     for (auto* atom : mol.atoms()) {
         bool charged_neighbour = false;
-        for (const auto* other : mol.atomNeighbors(atom)) charged_neighbour |= other->getFormalCharge() != 0;
-        if (charged_neighbour) continue;
+        for (const auto* other : mol.atomNeighbors(atom))
+            charged_neighbour |= other->getFormalCharge() != 0;
+        if (charged_neighbour)
+            continue;
         if (atom->getFormalCharge() == -1) {
             atom->setFormalCharge(0);
-            if (atom->getNoImplicit()) atom->setNumExplicitHs(atom->getNumExplicitHs() + 1);
+            if (atom->getNoImplicit())
+                atom->setNumExplicitHs(atom->getNumExplicitHs() + 1);
         } else if (atom->getFormalCharge() == 1 && atom->getAtomicNum() == 7 && atom->getTotalNumHs() > 0) {
             atom->setFormalCharge(0);
-            if (atom->getNumExplicitHs() > 0) atom->setNumExplicitHs(atom->getNumExplicitHs() - 1);
+            if (atom->getNumExplicitHs() > 0)
+                atom->setNumExplicitHs(atom->getNumExplicitHs() - 1);
         }
         atom->updatePropertyCache(false);
     }
@@ -40,7 +47,8 @@ void neutralise(RDKit::RWMol& mol) {
 Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit::RWMol> mol,
                                                            std::vector<std::string>& notes) {
     const auto parts = RDKit::MolOps::getMolFrags(*mol, false);
-    if (parts.size() == 1) return mol;
+    if (parts.size() == 1)
+        return mol;
     std::unique_ptr<RDKit::RWMol> kept;
     for (const auto& part : parts) {
         const std::string smiles = RDKit::MolToSmiles(*part);
@@ -50,12 +58,14 @@ Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit
         } else if (!kept) {
             kept = std::make_unique<RDKit::RWMol>(*part);
         } else if (RDKit::MolToSmiles(*kept) != smiles) {
-            return Refusal{"molecule", fmt::format("a mixture ({} with {}): only one substance is taken, and the "
-                                                   "counter-ions Na, K, Cl and HSO4 are taken off",
-                                                   RDKit::MolToSmiles(*kept), smiles)};
+            return Refusal{"molecule",
+                           fmt::format("a mixture ({} with {}): only one substance is taken, and the "
+                                       "counter-ions Na, K, Cl and HSO4 are taken off",
+                                       RDKit::MolToSmiles(*kept), smiles)};
         }
     }
-    if (!kept) return Refusal{"molecule", "it holds counter-ions only, no benzene ring"};
+    if (!kept)
+        return Refusal{"molecule", "it holds counter-ions only, no benzene ring"};
     neutralise(*kept);
     return kept;
 }

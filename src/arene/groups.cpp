@@ -26,8 +26,10 @@ std::string group_key(const RDKit::ROMol& mol, unsigned ring_atom, unsigned firs
         atoms.push_back(static_cast<int>(at));
         for (const auto* next : mol.atomNeighbors(mol.getAtomWithIdx(at))) {
             const unsigned index = next->getIdx();
-            if (index == ring_atom && at != first) return {};
-            if (seen[index]) continue;
+            if (index == ring_atom && at != first)
+                return {};
+            if (seen[index])
+                continue;
             seen[index] = true;
             front.push_back(index);
         }
@@ -35,8 +37,10 @@ std::string group_key(const RDKit::ROMol& mol, unsigned ring_atom, unsigned firs
     std::vector<std::string> symbols(mol.getNumAtoms());
     for (const auto* atom : mol.atoms()) {
         auto& symbol = symbols[atom->getIdx()];
-        if (atom->getIdx() == ring_atom) symbol = "*";
-        else symbol = RDKit::SmilesWrite::GetAtomSmiles(atom, false, nullptr, false, false);
+        if (atom->getIdx() == ring_atom)
+            symbol = "*";
+        else
+            symbol = RDKit::SmilesWrite::GetAtomSmiles(atom, false, nullptr, false, false);
     }
     return RDKit::MolFragmentToSmiles(mol, atoms, nullptr, &symbols, nullptr, false);
 }
@@ -72,10 +76,13 @@ std::string ring_smiles(const Tables& tables, const RingGroups& groups) {
     std::string smiles;
     for (std::size_t i = 0; i < 6; ++i) {
         smiles += 'c';
-        if (i == 0 || i == 5) smiles += "%99";
-        if (groups[i] < 0) continue;
+        if (i == 0 || i == 5)
+            smiles += "%99";
+        if (groups[i] < 0)
+            continue;
         const auto& group = tables.substituents[static_cast<std::size_t>(groups[i])];
-        if (group.smiles.empty()) return {};
+        if (group.smiles.empty())
+            return {};
         smiles += "(" + group.smiles.substr(1) + ")";
     }
     return canonical_smiles(smiles, "ring");
@@ -95,7 +102,8 @@ std::shared_ptr<const Pattern> read_pattern(const std::string& smarts, const std
         query.reset(RDKit::SmartsToMol(smarts));
     } catch (const std::exception&) {
     }
-    if (!query) throw Error(ErrorKind::tables, where, "the pattern can't be read: " + smarts);
+    if (!query)
+        throw Error(ErrorKind::tables, where, "the pattern can't be read: " + smarts);
     return std::make_shared<const Pattern>(Pattern{std::move(*query)});
 }
 

@@ -22,7 +22,8 @@ namespace {
 }
 
 void check_bytes(std::string_view smiles) {
-    if (smiles.empty()) fail("SMILES", "the text is empty, a SMILES or a known name was expected");
+    if (smiles.empty())
+        fail("SMILES", "the text is empty, a SMILES or a known name was expected");
     if (smiles.size() > longest_smiles)
         fail("SMILES", fmt::format("{} characters, at most {} are read", smiles.size(), longest_smiles));
     for (std::size_t i = 0; i < smiles.size(); ++i) {
@@ -42,14 +43,16 @@ void check_pairs(std::string_view smiles) {
         const char c = smiles[i];
         if (c == '[') {
             const auto end = smiles.find(']', i);
-            if (end == std::string_view::npos) fail_at(i, "this bracket is never closed");
+            if (end == std::string_view::npos)
+                fail_at(i, "this bracket is never closed");
             i = end;
         } else if (c == ']') {
             fail_at(i, "this bracket was never opened");
         } else if (c == '(') {
             open.push_back(i);
         } else if (c == ')') {
-            if (open.empty()) fail_at(i, "this parenthesis was never opened");
+            if (open.empty())
+                fail_at(i, "this parenthesis was never opened");
             open.pop_back();
         } else if ((c >= '0' && c <= '9') || c == '%') {
             const auto start = i;
@@ -61,13 +64,17 @@ void check_pairs(std::string_view smiles) {
                 number = static_cast<unsigned>((smiles[i + 1] - '0') * 10 + (smiles[i + 2] - '0'));
                 i += 2;
             }
-            if (ring[number]) ring[number].reset();
-            else ring[number] = start;
+            if (ring[number])
+                ring[number].reset();
+            else
+                ring[number] = start;
         }
     }
-    if (!open.empty()) fail_at(open.back(), "this parenthesis is never closed");
+    if (!open.empty())
+        fail_at(open.back(), "this parenthesis is never closed");
     for (unsigned number = 0; number < ring.size(); ++number)
-        if (ring[number]) fail_at(*ring[number], fmt::format("ring closure {} is never closed", number));
+        if (ring[number])
+            fail_at(*ring[number], fmt::format("ring closure {} is never closed", number));
 }
 
 /// The parser reports syntax faults only to its log, which is global: read it under a lock.
@@ -85,10 +92,12 @@ std::string parser_complaint(const std::string& smiles) {
     std::string text = log.str();
     const std::string mark = "SMILES Parse Error: ";
     const auto begin = text.find(mark);
-    if (begin == std::string::npos) return "it can't be read";
+    if (begin == std::string::npos)
+        return "it can't be read";
     text = text.substr(begin + mark.size());
     text = text.substr(0, text.find('\n'));
-    for (const char* tail : {" while parsing", " for input"}) text = text.substr(0, text.find(tail));
+    for (const char* tail : {" while parsing", " for input"})
+        text = text.substr(0, text.find(tail));
     return text;
 }
 
@@ -108,7 +117,8 @@ std::unique_ptr<RDKit::RWMol> read_smiles(std::string_view smiles) {
         check_pairs(smiles);
         fail("SMILES", parser_complaint(text));
     }
-    if (mol->getNumAtoms() == 0) fail("SMILES", "it holds no atom");
+    if (mol->getNumAtoms() == 0)
+        fail("SMILES", "it holds no atom");
     if (mol->getNumAtoms() > most_atoms)
         fail("SMILES", fmt::format("{} atoms, at most {} are read", mol->getNumAtoms(), most_atoms));
     return mol;

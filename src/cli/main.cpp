@@ -16,8 +16,8 @@ using namespace isotally;
 
 constexpr const char* quoting =
     "Quote every SMILES: the shell takes brackets, parentheses and # for itself ('Cc1ccccc1').";
-constexpr const char* standing =
-    "An estimate replaces neither calorimetry nor a qualified person; local rules and licensed practice come first.";
+constexpr const char* standing = "An estimate replaces neither calorimetry nor a qualified person; local "
+                                 "rules and licensed practice come first.";
 
 /// CLI11 leaves "nan" and "inf" through; the program does not.
 struct Options {
@@ -28,19 +28,25 @@ struct Options {
 };
 
 void add_common(CLI::App& command, Options& options) {
-    command.add_option("--tables", options.tables_folder, "Folder that replaces the built-in tables")->type_name("DIR");
+    command.add_option("--tables", options.tables_folder, "Folder that replaces the built-in tables")
+        ->type_name("DIR");
     command.add_flag("--quiet", options.quiet, "No notes and no progress on standard error");
 }
 
 void add_step(CLI::App& program, Options& options) {
     auto& request = options.step;
-    auto* step = program.add_subcommand("step", "One substitution: share of every isomer, ortho:para ratio, relative rate");
-    step->add_option("molecule", request.molecule, "Name, SMILES, path of a .mol file, or - for one SMILES a line")
+    auto* step = program.add_subcommand(
+        "step", "One substitution: share of every isomer, ortho:para ratio, relative rate");
+    step->add_option("molecule", request.molecule,
+                     "Name, SMILES, path of a .mol file, or - for one SMILES a line")
         ->required()
         ->type_name("MOLECULE");
-    step->add_option("--reaction", request.reaction, "Reaction id (isotally tables reactions lists them)")->type_name("ID");
+    step->add_option("--reaction", request.reaction, "Reaction id (isotally tables reactions lists them)")
+        ->type_name("ID");
     step->add_option("--temperature", request.temperature_C, "Temperature")->type_name("C");
-    step->add_option("--acid-percent", request.acid_percent, "Sulfuric acid, weight percent without the nitric acid")->type_name("W");
+    step->add_option("--acid-percent", request.acid_percent,
+                     "Sulfuric acid, weight percent without the nitric acid")
+        ->type_name("W");
     step->add_option("--level", request.draws.level, "How often the intervals should hold")
         ->check(CLI::Range(0.01, 0.999))
         ->capture_default_str()
@@ -49,36 +55,45 @@ void add_step(CLI::App& program, Options& options) {
         ->check(CLI::Range(10, 1000000))
         ->capture_default_str()
         ->type_name("N");
-    step->add_option("--seed", request.draws.seed, "Seed of the draws")->capture_default_str()->type_name("N");
+    step->add_option("--seed", request.draws.seed, "Seed of the draws")
+        ->capture_default_str()
+        ->type_name("N");
     auto* json = step->add_flag("--json", request.json, "One JSON document on standard output");
     step->add_flag("--csv", request.csv, "The table of isomers as CSV")->excludes(json);
     add_common(*step, options);
-    step->footer(std::string("Example: isotally step toluene --reaction nitration-mixed-acid\n") + quoting + "\n" + standing);
+    step->footer(std::string("Example: isotally step toluene --reaction nitration-mixed-acid\n") + quoting +
+                 "\n" + standing);
 }
 
 void add_tables(CLI::App& program, Options& options) {
     auto& request = options.tables;
-    auto* tables = program.add_subcommand("tables", "What is known, with value, uncertainty, source and status");
-    tables->add_option("kind", request.kind, "substituents, constants, reactions, model, measurements, factors, rates, states, "
-                                             "bans, cautions, names, sources")
+    auto* tables =
+        program.add_subcommand("tables", "What is known, with value, uncertainty, source and status");
+    tables
+        ->add_option("kind", request.kind,
+                     "substituents, constants, reactions, model, measurements, factors, rates, states, "
+                     "bans, cautions, names, sources")
         ->type_name("KIND");
     tables->add_option("id", request.id, "One entry with all its sources")->type_name("ID");
     auto* json = tables->add_flag("--json", request.json, "One JSON document on standard output");
     tables->add_flag("--csv", request.csv, "The table as CSV")->excludes(json);
     tables->add_flag("--lint", request.lint, "Every fault of the tables, each with file, line and field");
     tables->add_flag("--summary", request.summary, "Entries counted by status and evidence");
-    tables->add_option("--export", request.export_folder, "Write the tables into a new folder")->type_name("DIR");
+    tables->add_option("--export", request.export_folder, "Write the tables into a new folder")
+        ->type_name("DIR");
     add_common(*tables, options);
 }
 
 Knowledge load(const Options& options) {
-    if (options.tables_folder.empty()) return built_in_knowledge();
+    if (options.tables_folder.empty())
+        return built_in_knowledge();
     return prepare(parse_tables(read_table_folder(options.tables_folder)));
 }
 
 bool wants_json(int argc, char** argv) {
     for (int i = 1; i < argc; ++i)
-        if (std::string_view(argv[i]) == "--json") return true;
+        if (std::string_view(argv[i]) == "--json")
+            return true;
     return false;
 }
 
@@ -86,15 +101,20 @@ bool wants_json(int argc, char** argv) {
 Error usage_error(const CLI::ParseError& e) {
     std::string text = e.what();
     for (auto& c : text)
-        if (c == '\n') c = ' ';
+        if (c == '\n')
+            c = ' ';
     return {ErrorKind::usage, "command line", text + " (isotally --help tells more)"};
 }
 
 int run(int argc, char** argv, std::ostream& out) {
     Options options;
-    CLI::App program("isotally: shares of isomers in electrophilic substitution of benzenes, and how sure they are", "isotally");
+    CLI::App program(
+        "isotally: shares of isomers in electrophilic substitution of benzenes, and how sure they are",
+        "isotally");
     program.require_subcommand(1);
-    program.set_version_flag("--version", [] { return "isotally " ISOTALLY_VERSION ", tables " + built_in_knowledge().tables.digest; });
+    program.set_version_flag("--version", [] {
+        return "isotally " ISOTALLY_VERSION ", tables " + built_in_knowledge().tables.digest;
+    });
     program.footer(std::string(quoting) + "\n" + standing);
     add_step(program, options);
     add_tables(program, options);
@@ -109,12 +129,15 @@ int run(int argc, char** argv, std::ostream& out) {
     } catch (const CLI::ParseError& e) {
         throw usage_error(e);
     }
-    if (program.got_subcommand("step")) return cli::step_command(options.step, load(options), std::cin, out, std::cerr);
+    if (program.got_subcommand("step"))
+        return cli::step_command(options.step, load(options), std::cin, out, std::cerr);
     options.tables.chemistry_faults = lint_chemistry;
     options.tables.evidence_counts = [](const Tables& tables) { return count_evidence(prepare(tables)); };
-    const auto files = options.tables_folder.empty() ? built_in_files() : read_table_folder(options.tables_folder);
+    const auto files =
+        options.tables_folder.empty() ? built_in_files() : read_table_folder(options.tables_folder);
     const bool as_they_are = options.tables.lint || !options.tables.export_folder.empty();
-    return tables_command(options.tables, as_they_are ? Tables{} : parse_tables(files), files, out, std::cerr);
+    return tables_command(options.tables, as_they_are ? Tables{} : parse_tables(files), files, out,
+                          std::cerr);
 }
 
 }  // namespace
@@ -125,12 +148,16 @@ int main(int argc, char** argv) {
     try {
         const int status = run(argc, argv, std::cout);
         std::cout.flush();
-        if (!std::cout) return isotally::cli::fail({isotally::ErrorKind::output, "standard output", "it can't be written"}, false, std::cout, std::cerr);
+        if (!std::cout)
+            return isotally::cli::fail(
+                {isotally::ErrorKind::output, "standard output", "it can't be written"}, false, std::cout,
+                std::cerr);
         return status;
     } catch (const isotally::Error& e) {
         return isotally::cli::fail(e, json, std::cout, std::cerr);
     } catch (const std::exception& e) {
-        return isotally::cli::fail({isotally::ErrorKind::defect, "isotally", std::string("a defect of the program: ") + e.what()}, json,
-                                   std::cout, std::cerr);
+        return isotally::cli::fail(
+            {isotally::ErrorKind::defect, "isotally", std::string("a defect of the program: ") + e.what()},
+            json, std::cout, std::cerr);
     }
 }

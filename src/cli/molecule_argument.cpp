@@ -13,15 +13,18 @@ namespace {
 constexpr std::size_t longest_argument = 1000;
 
 std::string lower_case(std::string text) {
-    for (char& c : text) c = static_cast<char>(std::tolower(static_cast<unsigned char>(c)));
+    for (char& c : text)
+        c = static_cast<char>(std::tolower(static_cast<unsigned char>(c)));
     return text;
 }
 
 Answer<Arene> from_molfile(const Knowledge& knowledge, const std::string& path) {
     std::ifstream file(path, std::ios::binary);
-    if (!file) throw Error(ErrorKind::input, path, "the molfile can't be opened");
+    if (!file)
+        throw Error(ErrorKind::input, path, "the molfile can't be opened");
     std::string text((std::istreambuf_iterator<char>(file)), {});
-    if (file.bad() || (text.empty() && !file.eof())) throw Error(ErrorKind::input, path, "the molfile can't be read");
+    if (file.bad() || (text.empty() && !file.eof()))
+        throw Error(ErrorKind::input, path, "the molfile can't be read");
     try {
         return parse_molfile(knowledge.tables, knowledge.groups, text);
     } catch (const Error& e) {
@@ -33,15 +36,18 @@ Answer<Arene> from_molfile(const Knowledge& knowledge, const std::string& path) 
 std::string smiles_of_name(const Knowledge& knowledge, const std::string& text) {
     const std::string wanted = lower_case(text);
     for (const auto& known : knowledge.tables.names)
-        if (lower_case(known.name) == wanted) return known.smiles;
-    if (const auto groups = read_ring_name(knowledge.tables, text)) return ring_smiles(knowledge.tables, *groups);
+        if (lower_case(known.name) == wanted)
+            return known.smiles;
+    if (const auto groups = read_ring_name(knowledge.tables, text))
+        return ring_smiles(knowledge.tables, *groups);
     return {};
 }
 
 /// Does it look like a misspelt name rather than a SMILES? Names have letters no SMILES of a benzene needs.
 std::string name_hint(const Tables& tables, const std::string& text) {
     std::vector<std::string> names;
-    for (const auto& known : tables.names) names.push_back(known.name);
+    for (const auto& known : tables.names)
+        names.push_back(known.name);
     const auto nearest = nearest_word(lower_case(text), names);
     return nearest.empty() ? "" : fmt::format("; is the name \"{}\" meant?", nearest);
 }
@@ -52,27 +58,31 @@ Answer<Arene> read_molecule(const Knowledge& knowledge, const std::string& text)
     if (text.size() > longest_argument)
         throw Error(ErrorKind::input, "molecule",
                     fmt::format("{} characters, at most {} are read", text.size(), longest_argument));
-    if (text.ends_with(".mol")) return from_molfile(knowledge, text);
+    if (text.ends_with(".mol"))
+        return from_molfile(knowledge, text);
     const std::string known = smiles_of_name(knowledge, text);
-    if (!known.empty()) return parse_arene(knowledge.tables, knowledge.groups, known);
+    if (!known.empty())
+        return parse_arene(knowledge.tables, knowledge.groups, known);
     try {
         return parse_arene(knowledge.tables, knowledge.groups, text);
     } catch (const Error& e) {
         throw Error(e.kind, e.where,
-                    fmt::format("\"{}\" is neither a known name nor a SMILES: {}{}", text.substr(0, 60), e.what(),
-                                name_hint(knowledge.tables, text)));
+                    fmt::format("\"{}\" is neither a known name nor a SMILES: {}{}", text.substr(0, 60),
+                                e.what(), name_hint(knowledge.tables, text)));
     }
 }
 
 int read_reaction(const Tables& tables, const std::string& id) {
     const int found = find_reaction(tables, id);
-    if (found >= 0) return found;
+    if (found >= 0)
+        return found;
     std::vector<std::string> known;
-    for (const auto& reaction : tables.reactions) known.push_back(reaction.id);
+    for (const auto& reaction : tables.reactions)
+        known.push_back(reaction.id);
     const auto nearest = nearest_word(id, known);
     throw Error(ErrorKind::usage, "option --reaction",
-                fmt::format("there is no reaction \"{}\"{}; isotally tables reactions lists them", id.substr(0, 60),
-                            nearest.empty() ? "" : " (the nearest is " + nearest + ")"));
+                fmt::format("there is no reaction \"{}\"{}; isotally tables reactions lists them",
+                            id.substr(0, 60), nearest.empty() ? "" : " (the nearest is " + nearest + ")"));
 }
 
 }  // namespace isotally::cli

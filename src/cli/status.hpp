@@ -8,7 +8,16 @@
 
 namespace isotally::cli {
 
-enum class Status { answered = 0, refused = 1, usage = 2, input = 3, tables = 4, output = 5, defect = 70, interrupted = 130 };
+enum class Status {
+    answered = 0,
+    refused = 1,
+    usage = 2,
+    input = 3,
+    tables = 4,
+    output = 5,
+    defect = 70,
+    interrupted = 130
+};
 
 Status status_of(ErrorKind kind);
 std::string kind_name(ErrorKind kind);

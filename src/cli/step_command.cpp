@@ -17,8 +17,10 @@ namespace {
 /// "defaults", or which of the conditions were given.
 std::string assumed_text(const StepRequest& request, const Reaction& reaction) {
     const bool acid_given = !reaction.has_acid || request.acid_percent.has_value();
-    if (request.temperature_C && acid_given) return "as given";
-    if (!request.temperature_C && !request.acid_percent) return "defaults";
+    if (request.temperature_C && acid_given)
+        return "as given";
+    if (!request.temperature_C && !request.acid_percent)
+        return "defaults";
     return request.temperature_C ? "acid strength by default" : "temperature by default";
 }
 
@@ -26,19 +28,25 @@ using Models = std::map<std::string, std::shared_ptr<const FamilyModel>>;
 
 const FamilyModel& model_of(const Knowledge& knowledge, Models& models, const std::string& family) {
     auto& model = models[family];
-    if (!model) model = fit_family(knowledge, family);
+    if (!model)
+        model = fit_family(knowledge, family);
     return *model;
 }
 
-Answer<StepAnswer> answer(const StepRequest& request, const Knowledge& knowledge, Models& models, int reaction, const Arene& arene) {
-    const auto chosen = choose_conditions(knowledge.tables, reaction, request.temperature_C, request.acid_percent);
-    if (const auto* refused = refusal(chosen)) return *refused;
+Answer<StepAnswer> answer(const StepRequest& request, const Knowledge& knowledge, Models& models,
+                          int reaction, const Arene& arene) {
+    const auto chosen =
+        choose_conditions(knowledge.tables, reaction, request.temperature_C, request.acid_percent);
+    if (const auto* refused = refusal(chosen))
+        return *refused;
     const auto& family = knowledge.tables.reactions[static_cast<std::size_t>(reaction)].family;
-    return answer_step(knowledge, model_of(knowledge, models, family), arene, std::get<Conditions>(chosen), request.draws);
+    return answer_step(knowledge, model_of(knowledge, models, family), arene, std::get<Conditions>(chosen),
+                       request.draws);
 }
 
 /// The reactions that go on this ring, one line each; wrong use all the same, as no reaction was named.
-int list_reactions(const StepRequest& request, const Knowledge& knowledge, const Arene& arene, std::ostream& err) {
+int list_reactions(const StepRequest& request, const Knowledge& knowledge, const Arene& arene,
+                   std::ostream& err) {
     Models models;
     StepRequest quick = request;
     quick.draws.count = 1;
@@ -54,30 +62,37 @@ int list_reactions(const StepRequest& request, const Knowledge& knowledge, const
                                  lead.product_name.value_or(lead.site.product));
         }
     }
-    err << "--reaction is missing; on " << request.molecule << (lines.empty() ? " no known reaction goes\n" : " these go (largest isomer):\n") << lines;
+    err << "--reaction is missing; on " << request.molecule
+        << (lines.empty() ? " no known reaction goes\n" : " these go (largest isomer):\n") << lines;
     return static_cast<int>(Status::usage);
 }
 
 /// One line of a list: SMILES, optionally a blank and a name.
-std::string answer_line(const StepRequest& request, const Knowledge& knowledge, Models& models, int reaction, std::string line) {
-    if (!line.empty() && line.back() == '\r') line.pop_back();
+std::string answer_line(const StepRequest& request, const Knowledge& knowledge, Models& models, int reaction,
+                        std::string line) {
+    if (!line.empty() && line.back() == '\r')
+        line.pop_back();
     const auto blank = line.find_first_of(" \t");
     try {
         const auto arene = read_molecule(knowledge, line.substr(0, blank));
-        if (const auto* refused = refusal(arene)) return error_json(1, "refused", refused->where, refused->reason);
+        if (const auto* refused = refusal(arene))
+            return error_json(1, "refused", refused->where, refused->reason);
         const auto step = answer(request, knowledge, models, reaction, std::get<Arene>(arene));
-        if (const auto* refused = refusal(step)) return error_json(1, "refused", refused->where, refused->reason);
+        if (const auto* refused = refusal(step))
+            return error_json(1, "refused", refused->where, refused->reason);
         return step_json(knowledge.tables, std::get<StepAnswer>(step), request.draws, -1);
     } catch (const Error& e) {
         return error_json(static_cast<int>(status_of(e.kind)), kind_name(e.kind), e.where, e.what());
     }
 }
 
-int answer_list(const StepRequest& request, const Knowledge& knowledge, int reaction, std::istream& in, std::ostream& out) {
+int answer_list(const StepRequest& request, const Knowledge& knowledge, int reaction, std::istream& in,
+                std::ostream& out) {
     Models models;
     std::string line;
     while (std::getline(in, line)) {
-        if (line.find_first_not_of(" \t\r") == std::string::npos) continue;
+        if (line.find_first_not_of(" \t\r") == std::string::npos)
+            continue;
         out << answer_line(request, knowledge, models, reaction, line) << '\n';
     }
     return 0;
@@ -85,24 +100,34 @@ int answer_list(const StepRequest& request, const Knowledge& knowledge, int reac
 
 }  // namespace
 
-int step_command(const StepRequest& request, const Knowledge& knowledge, std::istream& in, std::ostream& out, std::ostream& err) {
+int step_command(const StepRequest& request, const Knowledge& knowledge, std::istream& in, std::ostream& out,
+                 std::ostream& err) {
     const auto& tables = knowledge.tables;
     const int reaction = request.reaction.empty() ? -1 : read_reaction(tables, request.reaction);
     if (request.molecule == "-") {
-        if (reaction < 0) throw Error(ErrorKind::usage, "option --reaction", "a list needs a reaction");
-        if (request.csv) throw Error(ErrorKind::usage, "option --csv", "a list is answered in JSON lines");
+        if (reaction < 0)
+            throw Error(ErrorKind::usage, "option --reaction", "a list needs a reaction");
+        if (request.csv)
+            throw Error(ErrorKind::usage, "option --csv", "a list is answered in JSON lines");
         return answer_list(request, knowledge, reaction, in, out);
     }
     const auto arene = read_molecule(knowledge, request.molecule);
-    if (const auto* refused = refusal(arene)) return refuse(*refused, request.json, out, err);
-    if (reaction < 0) return list_reactions(request, knowledge, std::get<Arene>(arene), err);
+    if (const auto* refused = refusal(arene))
+        return refuse(*refused, request.json, out, err);
+    if (reaction < 0)
+        return list_reactions(request, knowledge, std::get<Arene>(arene), err);
     Models models;
     const auto step = answer(request, knowledge, models, reaction, std::get<Arene>(arene));
-    if (const auto* refused = refusal(step)) return refuse(*refused, request.json, out, err);
+    if (const auto* refused = refusal(step))
+        return refuse(*refused, request.json, out, err);
     const auto& found = std::get<StepAnswer>(step);
-    if (request.json) out << step_json(tables, found, request.draws, 2) << '\n';
-    else if (request.csv) out << step_csv(found);
-    else out << step_text(tables, found, request.draws, assumed_text(request, tables.reactions[static_cast<std::size_t>(reaction)]));
+    if (request.json)
+        out << step_json(tables, found, request.draws, 2) << '\n';
+    else if (request.csv)
+        out << step_csv(found);
+    else
+        out << step_text(tables, found, request.draws,
+                         assumed_text(request, tables.reactions[static_cast<std::size_t>(reaction)]));
     return 0;
 }
 

@@ -11,7 +11,8 @@ namespace isotally {
 namespace {
 
 std::string_view packed() {
-    return {isotally_tables_pack_begin, static_cast<std::size_t>(isotally_tables_pack_end - isotally_tables_pack_begin)};
+    return {isotally_tables_pack_begin,
+            static_cast<std::size_t>(isotally_tables_pack_end - isotally_tables_pack_begin)};
 }
 
 }  // namespace

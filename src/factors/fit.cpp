@@ -35,10 +35,10 @@ struct Fit {
 
 struct FamilyModel {
     std::shared_ptr<const Fit> fit;
-    Eigen::VectorXd weights;              // S^-1 (y - H m), over the rows kept
-    std::string left_out;                 // compound whose rows are left out
-    Eigen::MatrixXd removed;              // columns of S^-1 that belong to those rows
-    Eigen::LLT<Eigen::MatrixXd> inner;    // their block of S^-1
+    Eigen::VectorXd weights;            // S^-1 (y - H m), over the rows kept
+    std::string left_out;               // compound whose rows are left out
+    Eigen::MatrixXd removed;            // columns of S^-1 that belong to those rows
+    Eigen::LLT<Eigen::MatrixXd> inner;  // their block of S^-1
 };
 
 namespace factors {
@@ -46,15 +46,19 @@ namespace {
 
 double prior_mean(const Settings& settings, const Form& form) {
     double mean = 0;
-    for (const auto& term : form) mean += term.weight * prior_of(settings, term.unknown).mean;
+    for (const auto& term : form)
+        mean += term.weight * prior_of(settings, term.unknown).mean;
     return mean;
 }
 
-Form row_form(const Settings& settings, const Observation& observation, const ObservedRow& row, int compound) {
+Form row_form(const Settings& settings, const Observation& observation, const ObservedRow& row,
+              int compound) {
     Form form;
     for (const auto& [site, weight] : row.weights) {
-        auto one = site_form(settings, observation.conditions, observation.sites[static_cast<std::size_t>(site)], compound);
-        for (auto& term : one) form.push_back({term.unknown, term.weight * weight});
+        auto one = site_form(settings, observation.conditions,
+                             observation.sites[static_cast<std::size_t>(site)], compound);
+        for (auto& term : one)
+            form.push_back({term.unknown, term.weight * weight});
     }
     compact(form);
     return form;
@@ -65,7 +69,8 @@ void note_carriers(Fit& fit, const Observation& observation) {
     std::set<std::pair<int, Relation>> seen;
     int carried = 0;
     for (const auto& row : observation.rows) {
-        if (row.kind != ObservedRow::Kind::figure) continue;
+        if (row.kind != ObservedRow::Kind::figure)
+            continue;
         for (const auto& [index, weight] : row.weights) {
             const auto& site = observation.sites[static_cast<std::size_t>(index)];
             const auto groups = in_state(*fit.settings.knowledge, observation.conditions, site.groups);
@@ -75,12 +80,14 @@ void note_carriers(Fit& fit, const Observation& observation) {
                     seen.emplace(groups[static_cast<std::size_t>(p)], relation_between(p, site.position));
         }
     }
-    for (const auto& one : seen) fit.carriers[one].emplace_back(&observation, carried);
+    for (const auto& one : seen)
+        fit.carriers[one].emplace_back(&observation, carried);
 }
 
 }  // namespace
 
-std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::string_view family, const std::vector<bool>& use) {
+std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::string_view family,
+                                            const std::vector<bool>& use) {
     auto model = std::make_shared<Fit>();
     model->settings = read_settings(knowledge, family);
     std::vector<double> residual;
@@ -88,10 +95,13 @@ std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::str
     std::vector<double> own;
     for (std::size_t i = 0; i < knowledge.observations.size(); ++i) {
         const auto& observation = knowledge.observations[i];
-        if (!use[i] || knowledge.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)].family != family)
+        if (!use[i] ||
+            knowledge.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)].family !=
+                family)
             continue;
         const int compound =
-            model->compounds.emplace(observation.compound, static_cast<int>(model->compounds.size())).first->second;
+            model->compounds.emplace(observation.compound, static_cast<int>(model->compounds.size()))
+                .first->second;
         model->observations.push_back(&observation);
         note_carriers(*model, observation);
         for (const auto& row : observation.rows) {
@@ -116,7 +126,8 @@ std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::str
     for (const auto& [unknown, column] : model->columns)
         for (const auto& [i, wi] : column.rows)
             for (const auto& [j, wj] : column.rows)
-                if (j <= i) s(i, j) += column.variance * wi * wj;
+                if (j <= i)
+                    s(i, j) += column.variance * wi * wj;
     for (Eigen::Index i = 0; i < n; ++i) {
         const auto at = static_cast<std::size_t>(i);
         s(i, i) += own[at] * own[at];
@@ -132,10 +143,12 @@ std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::str
 
 }  // namespace factors
 
-std::shared_ptr<const FamilyModel> fit_family(const Knowledge& knowledge, std::string_view family, std::string_view left_out) {
+std::shared_ptr<const FamilyModel> fit_family(const Knowledge& knowledge, std::string_view family,
+                                              std::string_view left_out) {
     std::vector<bool> use(knowledge.observations.size(), true);
     if (!left_out.empty())
-        for (std::size_t i = 0; i < use.size(); ++i) use[i] = knowledge.observations[i].compound != left_out;
+        for (std::size_t i = 0; i < use.size(); ++i)
+            use[i] = knowledge.observations[i].compound != left_out;
     return factors::fit_rows(knowledge, family, use);
 }
 
@@ -147,9 +160,11 @@ std::shared_ptr<const FamilyModel> leave_out(const FamilyModel& model, std::stri
         if (model.fit->observations[model.fit->observation_of_row[i]]->compound == compound)
             rows.push_back(static_cast<Eigen::Index>(i));
     const auto k = static_cast<Eigen::Index>(rows.size());
-    if (k == 0) return out;
+    if (k == 0)
+        return out;
     Eigen::MatrixXd chosen = Eigen::MatrixXd::Zero(model.weights.size(), k);
-    for (Eigen::Index i = 0; i < k; ++i) chosen(rows[static_cast<std::size_t>(i)], i) = 1;
+    for (Eigen::Index i = 0; i < k; ++i)
+        chosen(rows[static_cast<std::size_t>(i)], i) = 1;
     out->removed = model.fit->factor.solve(chosen);
     Eigen::MatrixXd block(k, k);
     Eigen::VectorXd own(k);
@@ -178,16 +193,19 @@ Posterior posterior(const FamilyModel& model, const std::vector<Form>& forms) {
     Posterior out{Eigen::VectorXd::Zero(q), Eigen::MatrixXd::Zero(q, q)};
     std::map<Unknown, std::vector<std::pair<Eigen::Index, double>>> by_unknown;
     for (Eigen::Index i = 0; i < q; ++i)
-        for (const auto& term : forms[static_cast<std::size_t>(i)]) by_unknown[term.unknown].emplace_back(i, term.weight);
+        for (const auto& term : forms[static_cast<std::size_t>(i)])
+            by_unknown[term.unknown].emplace_back(i, term.weight);
     for (const auto& [unknown, uses] : by_unknown) {
         const auto prior = factors::prior_of(fit.settings, unknown);
         const double variance = prior.sd * prior.sd;
         const auto column = fit.columns.find(unknown);
         for (const auto& [i, wi] : uses) {
             out.mean(i) += wi * prior.mean;
-            for (const auto& [j, wj] : uses) out.covariance(i, j) += variance * wi * wj;
+            for (const auto& [j, wj] : uses)
+                out.covariance(i, j) += variance * wi * wj;
             if (column != fit.columns.end())
-                for (const auto& [row, w] : column->second.rows) cross(row, i) += variance * w * wi;
+                for (const auto& [row, w] : column->second.rows)
+                    cross(row, i) += variance * w * wi;
         }
     }
     if (n > 0) {
@@ -211,7 +229,8 @@ void tell_evidence(const Fit& fit, Contribution& contribution, std::string_view 
     const auto found = fit.carriers.find({contribution.substituent, contribution.relation});
     if (found != fit.carriers.end())
         for (const auto& [observation, carried] : found->second) {
-            if (observation->compound == left_out) continue;
+            if (observation->compound == left_out)
+                continue;
             (carried == 1 ? mono : poly) = true;
             auto& sources = contribution.sources;
             if (carried == 1 && !observation->source.empty() &&
@@ -219,8 +238,13 @@ void tell_evidence(const Fit& fit, Contribution& contribution, std::string_view 
                 sources.push_back(observation->source);
         }
     const auto& constants = factors::group_constants(fit.settings, contribution.substituent);
-    contribution.evidence = mono ? "measured" : poly ? "inferred" : constants.assumed ? "assumed" : "correlated";
-    if (!mono) contribution.sources = {contribution.relation == meta ? constants.source_meta : constants.source_para};
+    contribution.evidence = mono                ? "measured"
+                            : poly              ? "inferred"
+                            : constants.assumed ? "assumed"
+                                                : "correlated";
+    if (!mono)
+        contribution.sources = {contribution.relation == meta ? constants.source_meta
+                                                              : constants.source_para};
     std::erase(contribution.sources, "");
 }
 
@@ -239,21 +263,25 @@ void explain_sites(const FamilyModel& model, const Conditions& conditions, int c
         std::vector<Correction> corrections;
         for (int p = 0; p < 6; ++p) {
             const int group = groups[static_cast<std::size_t>(p)];
-            if (group < 0 || p == site.position) continue;
+            if (group < 0 || p == site.position)
+                continue;
             contributions.push_back({group, relation_between(p, site.position), 0, 0, "", {}});
-            factors::add_contribution(settings, conditions, group, contributions.back().relation, 1, forms.emplace_back());
+            factors::add_contribution(settings, conditions, group, contributions.back().relation, 1,
+                                      forms.emplace_back());
             factors::compact(forms.back());
         }
         for (std::size_t which = 0; which < factors::corrections.size(); ++which) {
             const double count = factors::correction_count(settings, which, groups, site.position);
-            if (settings.correction[which].sd <= 0 || count == 0) continue;
+            if (settings.correction[which].sd <= 0 || count == 0)
+                continue;
             corrections.push_back({factors::corrections[which], 0, 0});
             forms.push_back({{{Type::correction, static_cast<int>(which), 0, 0}, count}});
         }
         if (contributions.size() > 1) {
             corrections.push_back({"the compound's own deviation", 0, 0});
-            forms.push_back({{{Type::discrepancy, compound, site.tag, 0}, 1},
-                             {{Type::discrepancy_of_conditions, compound, site.tag, conditions.reaction}, 1}});
+            forms.push_back(
+                {{{Type::discrepancy, compound, site.tag, 0}, 1},
+                 {{Type::discrepancy_of_conditions, compound, site.tag, conditions.reaction}, 1}});
         }
         const auto at = posterior(model, forms);
         for (std::size_t i = 0; i < forms.size(); ++i) {
@@ -281,15 +309,18 @@ SiteFactors site_factors(const FamilyModel& model, const Conditions& conditions,
     const auto known = fit.compounds.find(compound);
     const int index = known == fit.compounds.end() ? static_cast<int>(fit.compounds.size()) : known->second;
     std::vector<Form> forms;
-    for (const auto& site : sites) forms.push_back(factors::site_form(fit.settings, conditions, site, index));
+    for (const auto& site : sites)
+        forms.push_back(factors::site_form(fit.settings, conditions, site, index));
     const auto at = posterior(model, forms);
     SiteFactors out;
     out.mean.assign(at.mean.data(), at.mean.data() + at.mean.size());
     out.covariance.assign(at.covariance.data(), at.covariance.data() + at.covariance.size());
     for (const auto* observation : fit.observations)
-        if (observation->compound == compound && compound != model.left_out && observation->kind == Observation::Kind::shares)
+        if (observation->compound == compound && compound != model.left_out &&
+            observation->kind == Observation::Kind::shares)
             out.measured_by.push_back(observation->id);
-    if (explain) explain_sites(model, conditions, index, sites, out);
+    if (explain)
+        explain_sites(model, conditions, index, sites, out);
     return out;
 }
 
@@ -297,7 +328,8 @@ namespace factors {
 
 RowMarginal row_marginal(const FamilyModel& model, const Observation& observation, const ObservedRow& row) {
     const auto& fit = *model.fit;
-    const auto form = row_form(fit.settings, observation, row, fit.compounds.find(observation.compound)->second);
+    const auto form =
+        row_form(fit.settings, observation, row, fit.compounds.find(observation.compound)->second);
     const auto at = posterior(model, {form});
     return {at.mean(0), at.covariance(0, 0)};
 }
@@ -308,7 +340,8 @@ std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge&
     std::map<std::string, std::size_t> counts;
     std::vector<std::string> families;
     for (const auto& reaction : knowledge.tables.reactions) {
-        if (std::find(families.begin(), families.end(), reaction.family) != families.end()) continue;
+        if (std::find(families.begin(), families.end(), reaction.family) != families.end())
+            continue;
         families.push_back(reaction.family);
         const auto model = fit_family(knowledge, reaction.family);
         for (std::size_t i = 0; i < knowledge.tables.substituents.size(); ++i) {
@@ -316,7 +349,8 @@ std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge&
             for (const auto relation : {ortho, meta, para}) {
                 Contribution contribution{static_cast<int>(i), relation, 0, 0, "", {}};
                 tell_evidence(*model->fit, contribution, "");
-                if (best.empty() || contribution.evidence == "measured" || (contribution.evidence == "inferred" && best != "measured"))
+                if (best.empty() || contribution.evidence == "measured" ||
+                    (contribution.evidence == "inferred" && best != "measured"))
                     best = contribution.evidence;
             }
             ++counts[reaction.family + ", " + best];

@@ -10,7 +10,8 @@ namespace isotally::factors {
 namespace {
 
 constexpr int sweeps = 4;
-constexpr double says_nothing_sd = 1e3;
+constexpr double says_nothing_sd = 1000.0;
+constexpr double damping = 0.7;
 
 /// A Gaussian factor by precision and precision times mean.
 struct Natural {
@@ -19,7 +20,8 @@ struct Natural {
 
 /// Standard normal density over distribution function, stable in the far tail.
 double hazard(double z) {
-    if (z < -30) return -z;
+    if (z < -30)
+        return -z;
     const double density = std::exp(-0.5 * z * z) / std::sqrt(2 * std::numbers::pi);
     return density / (0.5 * std::erfc(-z / std::numbers::sqrt2));
 }
@@ -29,7 +31,8 @@ RowMarginal cut_off(const RowMarginal& x, double limit, double softness) {
     const double spread = x.variance + softness * softness;
     const double z = (limit - x.mean) / std::sqrt(spread);
     const double r = hazard(z);
-    return {x.mean - x.variance * r / std::sqrt(spread), x.variance - x.variance * x.variance * r * (z + r) / spread};
+    return {x.mean - x.variance * r / std::sqrt(spread),
+            x.variance - x.variance * x.variance * r * (z + r) / spread};
 }
 
 struct Bound {
@@ -50,9 +53,11 @@ void make_bounds_linear(Knowledge& knowledge, const std::string& family, const s
     for (std::size_t i = 0; i < use.size(); ++i)
         for (std::size_t r = 0; use[i] && r < knowledge.observations[i].rows.size(); ++r) {
             const auto& row = knowledge.observations[i].rows[r];
-            if (row.kind == ObservedRow::Kind::at_most) bounds.push_back({i, r, row.value, row.noise_sd, {}});
+            if (row.kind == ObservedRow::Kind::at_most)
+                bounds.push_back({i, r, row.value, row.noise_sd, {}});
         }
-    for (const auto& bound : bounds) write_back(knowledge, bound);
+    for (const auto& bound : bounds)
+        write_back(knowledge, bound);
     for (int sweep = 0; sweep < sweeps && !bounds.empty(); ++sweep) {
         const auto model = fit_rows(knowledge, family, use);
         for (auto& bound : bounds) {
@@ -60,27 +65,35 @@ void make_bounds_linear(Knowledge& knowledge, const std::string& family, const s
             const auto now = row_marginal(*model, observation, observation.rows[bound.row]);
             // the marginal without this bound, then with the cut
             const double precision = 1 / now.variance - bound.factor.precision;
-            if (precision <= 0) continue;
-            const RowMarginal without{(now.mean / now.variance - bound.factor.shift) / precision, 1 / precision};
+            if (precision <= 0)
+                continue;
+            const RowMarginal without{(now.mean / now.variance - bound.factor.shift) / precision,
+                                      1 / precision};
             const auto cut = cut_off(without, bound.limit, bound.softness);
-            const Natural wanted{std::max(0.0, 1 / cut.variance - precision), cut.mean / cut.variance - without.mean * precision};
-            bound.factor.precision += 0.7 * (wanted.precision - bound.factor.precision);
-            bound.factor.shift += 0.7 * (wanted.shift - bound.factor.shift);
+            const Natural wanted{std::max(0.0, 1 / cut.variance - precision),
+                                 cut.mean / cut.variance - without.mean * precision};
+            bound.factor.precision += damping * (wanted.precision - bound.factor.precision);
+            bound.factor.shift += damping * (wanted.shift - bound.factor.shift);
         }
-        for (const auto& bound : bounds) write_back(knowledge, bound);
+        for (const auto& bound : bounds)
+            write_back(knowledge, bound);
     }
 }
 
 void make_rates_linear(Knowledge& knowledge, const std::string& family, const std::vector<bool>& all) {
     auto use = all;
-    for (std::size_t i = 0; i < use.size(); ++i) use[i] = use[i] && knowledge.observations[i].kind != Observation::Kind::rate;
+    for (std::size_t i = 0; i < use.size(); ++i)
+        use[i] = use[i] && knowledge.observations[i].kind != Observation::Kind::rate;
     const auto model = fit_rows(knowledge, family, use);
     for (std::size_t i = 0; i < use.size(); ++i) {
         auto& observation = knowledge.observations[i];
-        if (!all[i] || observation.kind != Observation::Kind::rate) continue;
-        const auto at = site_factors(*model, observation.conditions, observation.compound, observation.sites, false);
+        if (!all[i] || observation.kind != Observation::Kind::rate)
+            continue;
+        const auto at =
+            site_factors(*model, observation.conditions, observation.compound, observation.sites, false);
         double total = 0, linear = 0;
-        for (std::size_t s = 0; s < at.mean.size(); ++s) total += observation.sites[s].multiplicity * std::pow(10.0, at.mean[s]);
+        for (std::size_t s = 0; s < at.mean.size(); ++s)
+            total += observation.sites[s].multiplicity * std::pow(10.0, at.mean[s]);
         auto& row = observation.rows.front();
         row.weights.clear();
         for (std::size_t s = 0; s < at.mean.size(); ++s) {
@@ -97,11 +110,14 @@ void make_rates_linear(Knowledge& knowledge, const std::string& family, const st
 void make_linear(Knowledge& knowledge) {
     std::vector<std::string> families;
     for (const auto& reaction : knowledge.tables.reactions)
-        if (std::find(families.begin(), families.end(), reaction.family) == families.end()) families.push_back(reaction.family);
+        if (std::find(families.begin(), families.end(), reaction.family) == families.end())
+            families.push_back(reaction.family);
     for (const auto& family : families) {
         std::vector<bool> use(knowledge.observations.size());
         for (std::size_t i = 0; i < use.size(); ++i)
-            use[i] = knowledge.tables.reactions[static_cast<std::size_t>(knowledge.observations[i].conditions.reaction)].family == family;
+            use[i] = knowledge.tables
+                         .reactions[static_cast<std::size_t>(knowledge.observations[i].conditions.reaction)]
+                         .family == family;
         make_rates_linear(knowledge, family, use);
         make_bounds_linear(knowledge, family, use);
     }

@@ -29,7 +29,8 @@ struct Placed {
     std::vector<Site> sites;
 };
 
-Placed place(const Knowledge& knowledge, const std::string& substrate, const Reaction& reaction, const std::string& where) {
+Placed place(const Knowledge& knowledge, const std::string& substrate, const Reaction& reaction,
+             const std::string& where) {
     auto arene = [&] {
         try {
             return parse_arene(knowledge.tables, knowledge.groups, substrate);
@@ -38,7 +39,8 @@ Placed place(const Knowledge& knowledge, const std::string& substrate, const Rea
         }
     }();
     if (const auto* refused = refusal(arene))
-        throw Error(ErrorKind::tables, where + ":substrate", fmt::format("{}: {}", substrate, refused->reason));
+        throw Error(ErrorKind::tables, where + ":substrate",
+                    fmt::format("{}: {}", substrate, refused->reason));
     Placed placed{std::get<Arene>(std::move(arene)), {}};
     placed.sites = sites(placed.arene, reaction.new_group);
     return placed;
@@ -55,14 +57,16 @@ LogShare log_share(double percent, double sd_points, int multiplicity, double wi
     return {std::log10(percent / multiplicity), sd * widening};
 }
 
-/// A small share that a donor does not lead to (odd positions from it) may come from another species, protonated
-/// or coordinated: an upper bound of what the neutral ring gives.
+/// A small share that a donor does not lead to (odd positions from it) may come from another species,
+/// protonated or coordinated: an upper bound of what the neutral ring gives.
 bool is_stray(const Tables& tables, const PlacedSite& site, double percent, const Noise& noise) {
-    if (percent > noise.stray_percent) return false;
+    if (percent > noise.stray_percent)
+        return false;
     bool donor = false, led = false;
     for (int p = 0; p < 6; ++p) {
         const int group = site.groups[static_cast<std::size_t>(p)];
-        if (group < 0 || tables.substituents[static_cast<std::size_t>(group)].kind != "donor") continue;
+        if (group < 0 || tables.substituents[static_cast<std::size_t>(group)].kind != "donor")
+            continue;
         donor = true;
         led |= (p - site.position) % 2 != 0;
     }
@@ -71,28 +75,34 @@ bool is_stray(const Tables& tables, const PlacedSite& site, double percent, cons
 
 /// Log-ratios of the listed isomers to the largest; isomers that were not listed enter as bounds where the
 /// record claims to be complete, or where it names a product that must be nearly all.
-void add_share_rows(const Tables& tables, const Measurement& record, const std::vector<Site>& sites, const Noise& noise,
-                    Observation& out) {
+void add_share_rows(const Tables& tables, const Measurement& record, const std::vector<Site>& sites,
+                    const Noise& noise, Observation& out) {
     const double widening = record.use == "weak" || record.from.confidence == "low" ? noise.weak : 1;
     std::vector<double> percent(sites.size(), 0), sd(sites.size(), 0);
     for (const auto& product : record.products) {
-        const auto site = std::find_if(sites.begin(), sites.end(), [&](const Site& s) { return s.product == product.smiles; });
+        const auto site = std::find_if(sites.begin(), sites.end(),
+                                       [&](const Site& s) { return s.product == product.smiles; });
         percent[static_cast<std::size_t>(site - sites.begin())] += product.percent;
         sd[static_cast<std::size_t>(site - sites.begin())] = product.sd.value_or(0);
     }
-    const auto top = static_cast<std::size_t>(std::max_element(percent.begin(), percent.end()) - percent.begin());
-    if (percent[top] <= 0) return;
+    const auto top =
+        static_cast<std::size_t>(std::max_element(percent.begin(), percent.end()) - percent.begin());
+    if (percent[top] <= 0)
+        return;
     const auto reference = log_share(percent[top], sd[top], sites[top].multiplicity, widening, noise);
     using Kind = ObservedRow::Kind;
     const auto row = [&](std::size_t site, double value, double row_sd, Kind kind) {
-        out.rows.push_back({{{static_cast<int>(site), 1.0}, {static_cast<int>(top), -1.0}}, value, row_sd, kind});
+        out.rows.push_back(
+            {{{static_cast<int>(site), 1.0}, {static_cast<int>(top), -1.0}}, value, row_sd, kind});
     };
     const auto at_most = [&](std::size_t site, double limit) {
-        row(site, std::log10(limit / sites[site].multiplicity) - reference.value, noise.softness, Kind::at_most);
+        row(site, std::log10(limit / sites[site].multiplicity) - reference.value, noise.softness,
+            Kind::at_most);
     };
     out.shared_sd = reference.sd;
     for (std::size_t i = 0; i < sites.size(); ++i) {
-        if (i == top) continue;
+        if (i == top)
+            continue;
         if (record.use == "bound") {
             at_most(i, std::max(noise.unlisted_percent, 100 - std::min(percent[top], noise.named_percent)));
         } else if (percent[i] > 0 && is_stray(tables, out.sites[i], percent[i], noise)) {
@@ -117,7 +127,8 @@ Conditions conditions_of(const Tables& tables, int reaction, std::optional<doubl
             acid_percent.value_or(standard("acid_default_percent", 0))};
 }
 
-Observation start(const Placed& placed, const std::string& id, const Conditions& conditions, const Provenance& from) {
+Observation start(const Placed& placed, const std::string& id, const Conditions& conditions,
+                  const Provenance& from) {
     Observation out;
     out.id = id;
     out.compound = placed.arene.smiles;
@@ -138,16 +149,22 @@ void add_measurement(Knowledge& knowledge, Measurement& record) {
     record.substrate = placed.arene.smiles;
     for (auto& product : record.products) {
         product.smiles = canonical_smiles(product.smiles, where + ":products");
-        if (std::none_of(placed.sites.begin(), placed.sites.end(), [&](const Site& s) { return s.product == product.smiles; }))
-            throw Error(ErrorKind::tables, where + ":products",
-                        fmt::format("{} is no product of {} in {}", product.smiles, record.substrate, row.id));
+        if (std::none_of(placed.sites.begin(), placed.sites.end(),
+                         [&](const Site& s) { return s.product == product.smiles; }))
+            throw Error(
+                ErrorKind::tables, where + ":products",
+                fmt::format("{} is no product of {} in {}", product.smiles, record.substrate, row.id));
     }
-    if (record.use == "no") return;
-    auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
+    if (record.use == "no")
+        return;
+    auto out = start(placed, record.id,
+                     conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
     // what one lone isomer below "nearly all" leaves open can't be put as a ratio
-    if (!(record.products.size() == 1 && record.use != "bound" && placed.sites.size() > 1 && record.products[0].percent < 95))
+    if (!(record.products.size() == 1 && record.use != "bound" && placed.sites.size() > 1 &&
+          record.products[0].percent < 95))
         add_share_rows(tables, record, placed.sites, read_noise(tables, row.family), out);
-    if (!out.rows.empty()) knowledge.observations.push_back(std::move(out));
+    if (!out.rows.empty())
+        knowledge.observations.push_back(std::move(out));
 }
 
 /// Relation of the only group of a monosubstituted benzene to a site of it.
@@ -158,13 +175,16 @@ Relation relation_to_group(const PlacedSite& site) {
 
 void add_rate(Knowledge& knowledge, RateFigure& record) {
     const auto& tables = knowledge.tables;
-    const std::string where = fmt::format("{}:{}", record.relation.empty() ? "rates.csv" : "factors.csv", record.from.line);
+    const std::string where =
+        fmt::format("{}:{}", record.relation.empty() ? "rates.csv" : "factors.csv", record.from.line);
     const int reaction = find_reaction(tables, record.reaction);
     const auto& row = tables.reactions[static_cast<std::size_t>(reaction)];
     const auto placed = place(knowledge, record.substrate, row, where);
     record.substrate = placed.arene.smiles;
-    if (record.use == "no" || record.use == "bound") return;
-    auto out = start(placed, record.id, conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
+    if (record.use == "no" || record.use == "bound")
+        return;
+    auto out = start(placed, record.id,
+                     conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
     const double sd = record.sd_log10 * (record.use == "weak" ? read_noise(tables, row.family).weak : 1);
     ObservedRow observed{{}, std::log10(record.value), sd, ObservedRow::Kind::figure};
     out.kind = record.relation.empty() ? Observation::Kind::rate : Observation::Kind::factor;
@@ -172,7 +192,8 @@ void add_rate(Knowledge& knowledge, RateFigure& record) {
         for (std::size_t i = 0; i < out.sites.size(); ++i)
             if (record.relation == relation_names[relation_to_group(out.sites[i])])
                 observed.weights = {{static_cast<int>(i), 1.0}};
-        if (observed.weights.empty()) throw Error(ErrorKind::tables, where + ":relation", "no such position on this ring");
+        if (observed.weights.empty())
+            throw Error(ErrorKind::tables, where + ":relation", "no such position on this ring");
     }
     out.rows.push_back(std::move(observed));
     knowledge.observations.push_back(std::move(out));
@@ -187,17 +208,21 @@ void add_ortho_para_ratios(Knowledge& knowledge) {
         for (const auto& [quantity, substrate] : rows) {
             const auto& reaction = tables.reactions[r];
             const auto figure = reaction.figures.find(quantity);
-            if (figure == reaction.figures.end() || figure->second.value <= 0) continue;
+            if (figure == reaction.figures.end() || figure->second.value <= 0)
+                continue;
             const std::string where = fmt::format("{}:{}", reaction.id, quantity);
             const auto placed = place(knowledge, substrate, reaction, where);
-            auto out = start(placed, where, conditions_of(tables, static_cast<int>(r), {}, {}), figure->second.from);
+            auto out =
+                start(placed, where, conditions_of(tables, static_cast<int>(r), {}, {}), figure->second.from);
             out.kind = Observation::Kind::rule;
-            ObservedRow observed{{}, std::log10(figure->second.value),
+            ObservedRow observed{{},
+                                 std::log10(figure->second.value),
                                  model_figure(tables, reaction.family, "ortho_para_rule_sd").value,
                                  ObservedRow::Kind::rule};
             for (std::size_t i = 0; i < out.sites.size(); ++i) {
                 const auto relation = relation_to_group(out.sites[i]);
-                if (relation != meta) observed.weights.emplace_back(static_cast<int>(i), relation == ortho ? 1.0 : -1.0);
+                if (relation != meta)
+                    observed.weights.emplace_back(static_cast<int>(i), relation == ortho ? 1.0 : -1.0);
             }
             out.rows.push_back(std::move(observed));
             knowledge.observations.push_back(std::move(out));
@@ -224,26 +249,37 @@ Knowledge resolve(Tables tables, std::vector<Fault>* faults) {
         try {
             step();
         } catch (const Error& e) {
-            if (!faults) throw;
+            if (!faults)
+                throw;
             faults->push_back({e.where, e.what()});
         }
     };
     attempt([&] { knowledge.groups = index_groups(knowledge.tables); });
-    if (faults && !faults->empty()) return knowledge;
+    if (faults && !faults->empty())
+        return knowledge;
     knowledge.states = factors::resolve_states(knowledge.tables);
     for (auto& name : knowledge.tables.names)
-        attempt([&] { name.smiles = canonical_smiles(name.smiles, fmt::format("names.csv:{}:smiles", name.from.line)); });
+        attempt([&] {
+            name.smiles = canonical_smiles(name.smiles, fmt::format("names.csv:{}:smiles", name.from.line));
+        });
     for (const auto& ban : knowledge.tables.bans)
-        for (const auto& [column, smarts] : {std::pair{"smarts", &ban.smarts}, std::pair{"unless", &ban.unless}})
+        for (const auto& [column, smarts] :
+             {std::pair{"smarts", &ban.smarts}, std::pair{"unless", &ban.unless}})
             if (!smarts->empty())
-                attempt([&, c = column, p = smarts] { read_pattern(*p, fmt::format("bans.csv:{}:{}", ban.from.line, c)); });
+                attempt([&, c = column, p = smarts] {
+                    read_pattern(*p, fmt::format("bans.csv:{}:{}", ban.from.line, c));
+                });
     for (const auto& caution : knowledge.tables.cautions)
         for (const auto& [column, smarts] : {std::pair{"substrate_smarts", &caution.substrate_smarts},
                                              std::pair{"product_smarts", &caution.product_smarts}})
             if (!smarts->empty())
-                attempt([&, c = column, p = smarts] { read_pattern(*p, fmt::format("cautions.csv:{}:{}", caution.from.line, c)); });
-    for (auto& record : knowledge.tables.measurements) attempt([&] { add_measurement(knowledge, record); });
-    for (auto& record : knowledge.tables.rates) attempt([&] { add_rate(knowledge, record); });
+                attempt([&, c = column, p = smarts] {
+                    read_pattern(*p, fmt::format("cautions.csv:{}:{}", caution.from.line, c));
+                });
+    for (auto& record : knowledge.tables.measurements)
+        attempt([&] { add_measurement(knowledge, record); });
+    for (auto& record : knowledge.tables.rates)
+        attempt([&] { add_rate(knowledge, record); });
     attempt([&] { add_ortho_para_ratios(knowledge); });
     return knowledge;
 }
@@ -259,7 +295,8 @@ Knowledge prepare(Tables tables) {
 std::vector<Fault> lint_chemistry(const Tables& tables) {
     std::vector<Fault> faults;
     auto knowledge = resolve(tables, &faults);
-    if (!faults.empty()) return faults;
+    if (!faults.empty())
+        return faults;
     try {
         factors::make_linear(knowledge);
     } catch (const Error& e) {

@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <cmath>
 #include <cstdlib>
+#include <string_view>
 
 namespace isotally::factors {
 namespace {
@@ -15,9 +16,12 @@ constexpr int most_likenesses = 4;
 const Figure* find_figure(const Tables& tables, std::string_view family, const std::string& quantity) {
     const Figure* general = nullptr;
     for (const auto& row : tables.model) {
-        if (row.quantity != quantity) continue;
-        if (row.family == family) return &row.figure;
-        if (row.family == "all") general = &row.figure;
+        if (row.quantity != quantity)
+            continue;
+        if (row.family == family)
+            return &row.figure;
+        if (row.family == "all")
+            general = &row.figure;
     }
     return general;
 }
@@ -26,12 +30,16 @@ const Figure* find_figure(const Tables& tables, std::string_view family, const s
 double sd_for(const Tables& tables, std::string_view family, const std::string& quantity, const char* kind,
               const char* relation) {
     std::vector<std::string> tries;
-    if (kind && relation) tries.push_back(fmt::format("{}:{}:{}", quantity, kind, relation));
-    if (kind) tries.push_back(fmt::format("{}:{}", quantity, kind));
-    if (relation) tries.push_back(fmt::format("{}:{}", quantity, relation));
+    if (kind && relation)
+        tries.push_back(fmt::format("{}:{}:{}", quantity, kind, relation));
+    if (kind)
+        tries.push_back(fmt::format("{}:{}", quantity, kind));
+    if (relation)
+        tries.push_back(fmt::format("{}:{}", quantity, relation));
     tries.push_back(quantity);
     for (const auto& name : tries)
-        if (const auto* figure = find_figure(tables, family, name)) return figure->value;
+        if (const auto* figure = find_figure(tables, family, name))
+            return figure->value;
     throw Error(ErrorKind::tables, "model.csv", fmt::format("no row for {} ({} or all)", quantity, family));
 }
 
@@ -51,12 +59,14 @@ GroupConstants look_up_constants(const Tables& tables, double stand_in_sd, doubl
     c.head = index;
     for (int step = 0; step < most_likenesses; ++step) {
         const int next = find_substituent(tables, tables.substituents[static_cast<std::size_t>(c.head)].like);
-        if (next < 0) break;
+        if (next < 0)
+            break;
         c.head = next;
     }
     const auto kind = std::find(kinds.begin(), kinds.end(), group->kind);
     c.kind = static_cast<int>(kind - kinds.begin());
-    const auto look = [&](std::initializer_list<const char*> quantities, double& value, double& sd, std::string* source) {
+    const auto look = [&](std::initializer_list<const char*> quantities, double& value, double& sd,
+                          std::string* source) {
         const auto* at = group;
         double widening = 0;
         for (int step = 0; at && step < most_likenesses; ++step) {
@@ -67,7 +77,8 @@ GroupConstants look_up_constants(const Tables& tables, double stand_in_sd, doubl
                     value = found->second.value;
                     sd = std::sqrt(square(found->second.sd) + square(widening) +
                                    (first ? 0 : square(stand_in_sd)));
-                    if (source) *source = found->second.from.source;
+                    if (source)
+                        *source = found->second.from.source;
                     c.assumed |= step > 0 || !first;
                     return;
                 }
@@ -77,7 +88,8 @@ GroupConstants look_up_constants(const Tables& tables, double stand_in_sd, doubl
             at = next < 0 ? nullptr : &tables.substituents[static_cast<std::size_t>(next)];
             widening += like_sd;
         }
-        c.missing = fmt::format("{} has no {} and no group to stand in for it", group->id, *quantities.begin());
+        c.missing =
+            fmt::format("{} has no {} and no group to stand in for it", group->id, *quantities.begin());
     };
     look({"sigma_p_plus", "sigma_p"}, c.sigma_para, c.sd_para, &c.source_para);
     look({"sigma_m_plus", "sigma_m"}, c.sigma_meta, c.sd_meta, &c.source_meta);
@@ -97,7 +109,9 @@ Settings read_settings(const Knowledge& knowledge, std::string_view family) {
     s.ortho_steric = prior_row(tables, family, "ortho_steric");
     s.ortho_sigma = prior_row(tables, family, "ortho_sigma");
     s.acceptor_para = prior_row(tables, family, "acceptor_para");
-    const auto plain = [&](const char* quantity) { return sd_for(tables, family, quantity, nullptr, nullptr); };
+    const auto plain = [&](const char* quantity) {
+        return sd_for(tables, family, quantity, nullptr, nullptr);
+    };
     s.rho_of_conditions_sd = plain("rho_of_conditions_sd");
     s.ortho_offset_of_conditions_sd = plain("ortho_offset_of_conditions_sd");
     s.ortho_steric_of_conditions_sd = plain("ortho_steric_of_conditions_sd");
@@ -118,7 +132,8 @@ Settings read_settings(const Knowledge& knowledge, std::string_view family) {
     s.acid_reference_percent = plain("acid_reference_percent");
     if (!s.enthalpic) {
         for (std::size_t r = 0; r < 3; ++r)
-            s.temperature[r] = prior_row(tables, family, fmt::format("temperature_slope:{}", relation_names[r]));
+            s.temperature[r] =
+                prior_row(tables, family, fmt::format("temperature_slope:{}", relation_names[r]));
         s.temperature_slope_sd = plain("temperature_slope_sd");
     }
     for (std::size_t i = 0; i < corrections.size(); ++i)
@@ -139,7 +154,8 @@ Settings read_settings(const Knowledge& knowledge, std::string_view family) {
 
 const GroupConstants& group_constants(const Settings& settings, int substituent) {
     const auto& constants = settings.groups[static_cast<std::size_t>(substituent)];
-    if (!constants.missing.empty()) throw Error(ErrorKind::tables, "constants.csv", constants.missing);
+    if (!constants.missing.empty())
+        throw Error(ErrorKind::tables, "constants.csv", constants.missing);
     return constants;
 }
 
@@ -148,48 +164,71 @@ Prior prior_of(const Settings& s, const Unknown& u) {
     const auto kind = [&] { return static_cast<std::size_t>(group_constants(s, u.a).kind); };
     const auto own = [&] { return group_constants(s, u.a).head == u.a ? 1.0 : s.own_fraction; };
     switch (u.type) {
-        case Type::rho: return s.rho;
-        case Type::rho_of_conditions: return {0, s.rho_of_conditions_sd};
-        case Type::ortho_offset: return s.ortho_offset;
-        case Type::ortho_steric: return s.ortho_steric;
-        case Type::ortho_sigma: return s.ortho_sigma;
-        case Type::ortho_offset_of_conditions: return {0, s.ortho_offset_of_conditions_sd};
-        case Type::ortho_steric_of_conditions: return {0, s.ortho_steric_of_conditions_sd};
-        case Type::acceptor_para: return s.acceptor_para;
-        case Type::kind_residual: return {0, s.kind_residual_sd[a][b]};
-        case Type::common_residual: return {0, own() * s.common_residual_sd[kind()]};
-        case Type::residual: {
-            const auto& c = group_constants(s, u.a);
-            const double sigma_sd = u.b == meta ? c.sd_meta : c.sd_para;
-            double sd = std::hypot(own() * s.residual_sd[static_cast<std::size_t>(c.kind)][b], s.rho.mean * sigma_sd);
-            if (u.b == ortho) sd = std::hypot(sd, s.ortho_steric.mean * c.sd_nu);
-            return {0, sd};
-        }
-        case Type::condition_common: return {0, own() * s.condition_common_sd[kind()]};
-        case Type::condition: return {0, own() * s.condition_sd[kind()][b]};
-        case Type::acid_kind: return {0, s.acid_kind_sd[a][b]};
-        case Type::acid_slope: return {0, own() * s.acid_slope_sd[kind()][b]};
-        case Type::temperature: return s.temperature[b];
-        case Type::temperature_slope: return {0, own() * s.temperature_slope_sd};
-        case Type::correction: return s.correction[a];
-        case Type::discrepancy: return {0, s.discrepancy_sd};
-        case Type::discrepancy_of_conditions: return {0, s.discrepancy_of_conditions_sd};
+    case Type::rho:
+        return s.rho;
+    case Type::rho_of_conditions:
+        return {0, s.rho_of_conditions_sd};
+    case Type::ortho_offset:
+        return s.ortho_offset;
+    case Type::ortho_steric:
+        return s.ortho_steric;
+    case Type::ortho_sigma:
+        return s.ortho_sigma;
+    case Type::ortho_offset_of_conditions:
+        return {0, s.ortho_offset_of_conditions_sd};
+    case Type::ortho_steric_of_conditions:
+        return {0, s.ortho_steric_of_conditions_sd};
+    case Type::acceptor_para:
+        return s.acceptor_para;
+    case Type::kind_residual:
+        return {0, s.kind_residual_sd[a][b]};
+    case Type::common_residual:
+        return {0, own() * s.common_residual_sd[kind()]};
+    case Type::residual: {
+        const auto& c = group_constants(s, u.a);
+        const double sigma_sd = u.b == meta ? c.sd_meta : c.sd_para;
+        double sd =
+            std::hypot(own() * s.residual_sd[static_cast<std::size_t>(c.kind)][b], s.rho.mean * sigma_sd);
+        if (u.b == ortho)
+            sd = std::hypot(sd, s.ortho_steric.mean * c.sd_nu);
+        return {0, sd};
+    }
+    case Type::condition_common:
+        return {0, own() * s.condition_common_sd[kind()]};
+    case Type::condition:
+        return {0, own() * s.condition_sd[kind()][b]};
+    case Type::acid_kind:
+        return {0, s.acid_kind_sd[a][b]};
+    case Type::acid_slope:
+        return {0, own() * s.acid_slope_sd[kind()][b]};
+    case Type::temperature:
+        return s.temperature[b];
+    case Type::temperature_slope:
+        return {0, own() * s.temperature_slope_sd};
+    case Type::correction:
+        return s.correction[a];
+    case Type::discrepancy:
+        return {0, s.discrepancy_sd};
+    case Type::discrepancy_of_conditions:
+        return {0, s.discrepancy_of_conditions_sd};
     }
     return {};
 }
 
-void add_contribution(const Settings& s, const Conditions& conditions, int group, Relation relation, double weight,
-                      Form& form) {
+void add_contribution(const Settings& s, const Conditions& conditions, int group, Relation relation,
+                      double weight, Form& form) {
     const auto& c = group_constants(s, group);
     const int reaction = conditions.reaction;
     const double selectivity = s.selectivity[static_cast<std::size_t>(reaction)];
-    const double heat = s.enthalpic ? (s.temperature_reference_C + kelvin) / (conditions.temperature_C + kelvin) : 1.0;
-    const double w = weight * heat;       // of what the conditions themselves bring
+    const double heat =
+        s.enthalpic ? (s.temperature_reference_C + kelvin) / (conditions.temperature_C + kelvin) : 1.0;
+    const double w = weight * heat;         // of what the conditions themselves bring
     const double scaled = w * selectivity;  // of what the family shares
     const double sigma = relation == meta ? c.sigma_meta : c.sigma_para;
     form.push_back({{Type::rho, 0, 0, 0}, scaled * sigma});
     form.push_back({{Type::rho_of_conditions, reaction, 0, 0}, w * sigma});
-    if (relation == para && (c.kind == 3 || c.kind == 4)) form.push_back({{Type::acceptor_para, 0, 0, 0}, scaled});
+    if (relation == para && (c.kind == 3 || c.kind == 4))
+        form.push_back({{Type::acceptor_para, 0, 0, 0}, scaled});
     if (relation == ortho) {
         form.push_back({{Type::ortho_offset, 0, 0, 0}, w});
         form.push_back({{Type::ortho_steric, 0, 0, 0}, w * c.nu});
@@ -201,45 +240,35 @@ void add_contribution(const Settings& s, const Conditions& conditions, int group
     const bool has_acid = s.knowledge->tables.reactions[static_cast<std::size_t>(reaction)].has_acid;
     const double stronger = has_acid ? (conditions.acid_percent - s.acid_reference_percent) / 10 : 0;
     const double hotter = s.enthalpic ? 0 : (conditions.temperature_C - s.temperature_reference_C) / 10;
-    if (has_acid) form.push_back({{Type::acid_kind, c.kind, relation, 0}, w * stronger});
-    if (!s.enthalpic) form.push_back({{Type::temperature, 0, relation, 0}, weight * hotter});
+    if (has_acid)
+        form.push_back({{Type::acid_kind, c.kind, relation, 0}, w * stronger});
+    if (!s.enthalpic)
+        form.push_back({{Type::temperature, 0, relation, 0}, weight * hotter});
     const auto add_group = [&](int member) {
         form.push_back({{Type::common_residual, member, 0, 0}, scaled});
         form.push_back({{Type::residual, member, relation, 0}, scaled});
         form.push_back({{Type::condition_common, member, 0, reaction}, w});
         form.push_back({{Type::condition, member, relation, reaction}, w});
-        if (has_acid) form.push_back({{Type::acid_slope, member, relation, 0}, w * stronger});
-        if (!s.enthalpic) form.push_back({{Type::temperature_slope, member, relation, 0}, weight * hotter});
+        if (has_acid)
+            form.push_back({{Type::acid_slope, member, relation, 0}, w * stronger});
+        if (!s.enthalpic)
+            form.push_back({{Type::temperature_slope, member, relation, 0}, weight * hotter});
     };
     add_group(c.head);
-    if (c.head != group) add_group(group);
+    if (c.head != group)
+        add_group(group);
 }
 
 double correction_count(const Settings& s, std::size_t which, const RingGroups& groups, int position) {
-    const auto at = [&](int p) { return groups[static_cast<std::size_t>((p % 6 + 6) % 6)]; };
-    const auto is = [&](int group, std::initializer_list<int> wanted) {
-        if (group < 0) return false;
-        const int kind = group_constants(s, group).kind;
-        return std::find(wanted.begin(), wanted.end(), kind) != wanted.end();
+    const auto at = [&](int p) { return groups[static_cast<std::size_t>((p + 6) % 6)]; };
+    const auto kind = [&](int p) { return at(p) < 0 ? -1 : group_constants(s, at(p)).kind; };
+    if (corrections[which] == std::string_view("flanked"))
+        return at(position - 1) >= 0 && at(position + 1) >= 0 ? 1 : 0;
+    const auto polar = [&](int p) {
+        return kind(p) >= 0 && kinds[static_cast<std::size_t>(kind(p))] != std::string_view("alkyl");
     };
-    const auto acceptor = [&](int p) { return is(at(p), {3, 4}); };
-    const auto donor = [&](int p) { return is(at(p), {2}); };
-    double count = 0;
-    switch (which) {
-        case 0: return at(position - 1) >= 0 && at(position + 1) >= 0 ? 1 : 0;
-        case 1:  // an acceptor next to a donor blunts it at the donor's ortho and para positions
-            for (int p = 0; p < 6; ++p)
-                if (donor(p) && (acceptor(p + 1) || acceptor(p - 1)) && std::abs(p - position) % 2 == 1) ++count;
-            return count;
-        case 2:
-            for (int p = 0; p < 6; ++p)
-                for (int q = p + 1; q < 6; ++q) count += acceptor(p) && acceptor(q);
-            return count;
-        default:
-            for (int p = 0; p < 6; ++p)
-                for (int q = p + 1; q < 6; ++q) count += donor(p) && donor(q);
-            return count;
-    }
+    const auto pressed = [&](int near, int far) { return polar(near) && kind(near) == kind(far) ? 1 : 0; };
+    return pressed(position - 1, position - 2) + pressed(position + 1, position + 2);
 }
 
 Form site_form(const Settings& s, const Conditions& conditions, const PlacedSite& site, int compound) {
@@ -248,14 +277,17 @@ Form site_form(const Settings& s, const Conditions& conditions, const PlacedSite
     int substituents = 0;
     for (int p = 0; p < 6; ++p) {
         const int group = groups[static_cast<std::size_t>(p)];
-        if (group < 0 || p == site.position) continue;
+        if (group < 0 || p == site.position)
+            continue;
         ++substituents;
         add_contribution(s, conditions, group, relation_between(p, site.position), 1, form);
     }
     for (std::size_t which = 0; which < corrections.size(); ++which) {
-        if (s.correction[which].sd <= 0) continue;
+        if (s.correction[which].sd <= 0)
+            continue;
         const double count = correction_count(s, which, groups, site.position);
-        if (count != 0) form.push_back({{Type::correction, static_cast<int>(which), 0, 0}, count});
+        if (count != 0)
+            form.push_back({{Type::correction, static_cast<int>(which), 0, 0}, count});
     }
     if (substituents > 1) {
         form.push_back({{Type::discrepancy, compound, site.tag, 0}, 1});
@@ -269,8 +301,10 @@ void compact(Form& form) {
     std::sort(form.begin(), form.end(), [](const Term& x, const Term& y) { return x.unknown < y.unknown; });
     Form summed;
     for (const auto& term : form) {
-        if (!summed.empty() && summed.back().unknown == term.unknown) summed.back().weight += term.weight;
-        else summed.push_back(term);
+        if (!summed.empty() && summed.back().unknown == term.unknown)
+            summed.back().weight += term.weight;
+        else
+            summed.push_back(term);
     }
     form = std::move(summed);
 }

@@ -12,26 +12,26 @@ namespace isotally::factors {
 
 /// An unknown: its type and up to three indices.
 enum class Type : std::uint8_t {
-    rho,                  // slope on sigma plus, shared by the family
-    rho_of_conditions,    // deviation of the slope; a: reaction
-    ortho_offset,         // a of x[ortho] = x[para] + a + b nu + c sigma
+    rho,                // slope on sigma plus, shared by the family
+    rho_of_conditions,  // deviation of the slope; a: reaction
+    ortho_offset,       // a of x[ortho] = x[para] + a + b nu + c sigma
     ortho_steric,
     ortho_sigma,
     ortho_offset_of_conditions,  // a: reaction
     ortho_steric_of_conditions,
-    acceptor_para,        // extra of acceptors at para
-    kind_residual,        // a: kind, b: relation
+    acceptor_para,  // extra of acceptors at para
+    kind_residual,  // a: kind, b: relation
     // of groups: a is the head of a series, shared by its members, or a member's own part
-    common_residual,      // a: group; the same at all positions of the ring
-    residual,             // a: group, b: relation
-    condition_common,     // a: group, c: reaction
-    condition,            // a: group, b: relation, c: reaction
-    acid_kind,            // slope per ten weight percent; a: kind, b: relation
-    acid_slope,           // a: group, b: relation
-    temperature,          // slope per ten degrees, families that are not enthalpic; b: relation
-    temperature_slope,    // a: group, b: relation
-    correction,           // a: which
-    discrepancy,          // a: compound, b: site
+    common_residual,            // a: group; the same at all positions of the ring
+    residual,                   // a: group, b: relation
+    condition_common,           // a: group, c: reaction
+    condition,                  // a: group, b: relation, c: reaction
+    acid_kind,                  // slope per ten weight percent; a: kind, b: relation
+    acid_slope,                 // a: group, b: relation
+    temperature,                // slope per ten degrees, families that are not enthalpic; b: relation
+    temperature_slope,          // a: group, b: relation
+    correction,                 // a: which
+    discrepancy,                // a: compound, b: site
     discrepancy_of_conditions,  // c: reaction
 };
 
@@ -57,18 +57,17 @@ inline constexpr std::array<const char*, 9> kinds{"alkyl",    "halogen", "donor"
 
 /// Corrections to additivity: what each counts is in correction_count; whether a family has it, and
 /// with which prior, is in model.csv ("correction:flanked").
-inline constexpr std::array<const char*, 4> corrections{"flanked", "donor beside acceptor", "two acceptors",
-                                                        "two donors"};
+inline constexpr std::array<const char*, 2> corrections{"flanked", "buttressed"};
 
 /// Constants of a group with the stand-ins for missing ones.
 struct GroupConstants {
     int kind = 0;
     double sigma_para = 0, sigma_meta = 0, nu = 0;
     double sd_para = 0, sd_meta = 0, sd_nu = 0;
-    int head = -1;          // of its series: the group it is like, through all steps (itself if none)
-    bool assumed = false;   // a stand-in was needed
+    int head = -1;         // of its series: the group it is like, through all steps (itself if none)
+    bool assumed = false;  // a stand-in was needed
     std::string source_para, source_meta;
-    std::string missing;    // what can't be found even so
+    std::string missing;  // what can't be found even so
 };
 
 /// Numbers of one family, read once from model.csv and reaction_figures.csv.
@@ -86,8 +85,8 @@ struct Settings {
     double temperature_slope_sd = 0;
     std::array<Prior, corrections.size()> correction{};
     double discrepancy_sd = 0, discrepancy_of_conditions_sd = 0;
-    double own_fraction = 0;  // what a member of a series keeps to itself, of the sd of the series
-    std::vector<double> selectivity;  // by reaction: rho of the conditions over rho of the family
+    double own_fraction = 0;             // what a member of a series keeps to itself, of the sd of the series
+    std::vector<double> selectivity;     // by reaction: rho of the conditions over rho of the family
     std::vector<GroupConstants> groups;  // by substituent
 };
 

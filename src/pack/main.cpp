@@ -13,8 +13,10 @@ int main(int argc, char** argv) {
     try {
         const auto files = isotally::read_table_folder(argv[1]);
         const auto faults = isotally::lint_tables(files);
-        for (const auto& fault : faults) std::cerr << fault.where << ": " << fault.message << '\n';
-        if (!faults.empty()) return 4;
+        for (const auto& fault : faults)
+            std::cerr << fault.where << ": " << fault.message << '\n';
+        if (!faults.empty())
+            return 4;
         const auto packed = isotally::pack(isotally::prepare(isotally::parse_tables(files)), files);
         const std::string temporary = std::string(argv[2]) + ".new";
         std::ofstream out(temporary, std::ios::binary);

@@ -10,7 +10,8 @@
 namespace isotally::report {
 
 std::string number(double value) {
-    if (value == 0) return "0";
+    if (value == 0)
+        return "0";
     return fmt::format("{:.12g}", value);
 }
 
@@ -20,7 +21,8 @@ double rounded(double value) {
 
 std::string locants_text(const IsomerShare& share, bool several_rings) {
     std::string text = several_rings ? fmt::format("ring {}: ", share.site.ring + 1) : "";
-    for (std::size_t i = 0; i < share.locants.size(); ++i) text += (i ? "," : "") + std::to_string(share.locants[i]);
+    for (std::size_t i = 0; i < share.locants.size(); ++i)
+        text += (i ? "," : "") + std::to_string(share.locants[i]);
     return text;
 }
 
@@ -40,7 +42,8 @@ std::vector<std::string> wrapped(const std::string& text, std::size_t width) {
     while (begin <= text.size()) {
         const auto end = std::min(text.find(' ', begin), text.size());
         const auto word = text.substr(begin, end - begin);
-        if (!lines.back().empty() && lines.back().size() + 1 + word.size() > width) lines.emplace_back();
+        if (!lines.back().empty() && lines.back().size() + 1 + word.size() > width)
+            lines.emplace_back();
         lines.back() += (lines.back().empty() ? "" : " ") + word;
         begin = end + 1;
     }
@@ -48,9 +51,11 @@ std::vector<std::string> wrapped(const std::string& text, std::size_t width) {
 }
 
 std::string csv_field(const std::string& text) {
-    if (text.find_first_of(",\"\n\r") == std::string::npos) return text;
+    if (text.find_first_of(",\"\n\r") == std::string::npos)
+        return text;
     std::string quoted = "\"";
-    for (const char c : text) quoted += c == '"' ? std::string("\"\"") : std::string(1, c);
+    for (const char c : text)
+        quoted += c == '"' ? std::string("\"\"") : std::string(1, c);
     return quoted + "\"";
 }
 

@@ -16,14 +16,16 @@ Json or_null(const std::optional<std::string>& text) {
 Json site_json(const Tables& tables, const IsomerShare& share) {
     Json contributions = Json::array(), corrections = Json::array();
     for (const auto& one : share.contributions)
-        contributions.push_back({{"substituent", tables.substituents[static_cast<std::size_t>(one.substituent)].name},
-                                 {"relation", relation_names[one.relation]},
-                                 {"log10_factor", rounded(one.log10_factor)},
-                                 {"sd", rounded(one.sd)},
-                                 {"evidence", one.evidence},
-                                 {"sources", one.sources}});
+        contributions.push_back(
+            {{"substituent", tables.substituents[static_cast<std::size_t>(one.substituent)].name},
+             {"relation", relation_names[one.relation]},
+             {"log10_factor", rounded(one.log10_factor)},
+             {"sd", rounded(one.sd)},
+             {"evidence", one.evidence},
+             {"sources", one.sources}});
     for (const auto& one : share.corrections)
-        corrections.push_back({{"name", one.name}, {"log10_factor", rounded(one.log10_factor)}, {"sd", rounded(one.sd)}});
+        corrections.push_back(
+            {{"name", one.name}, {"log10_factor", rounded(one.log10_factor)}, {"sd", rounded(one.sd)}});
     return {{"ring", share.site.ring + 1},
             {"locants", share.locants},
             {"multiplicity", share.site.multiplicity},
@@ -46,10 +48,12 @@ Json site_json(const Tables& tables, const IsomerShare& share) {
 std::string step_json(const Tables& tables, const StepAnswer& answer, const Draws& draws, int indent) {
     const auto& reaction = tables.reactions[static_cast<std::size_t>(answer.conditions.reaction)];
     Json sites = Json::array(), cautions = Json::array();
-    for (const auto& share : answer.shares) sites.push_back(site_json(tables, share));
+    for (const auto& share : answer.shares)
+        sites.push_back(site_json(tables, share));
     for (const auto& caution : answer.cautions) {
         Json one{{"code", caution.code}, {"text", caution.text}};
-        if (!caution.products.empty()) one["products"] = caution.products;
+        if (!caution.products.empty())
+            one["products"] = caution.products;
         cautions.push_back(std::move(one));
     }
     Json ratio = nullptr;
@@ -57,35 +61,42 @@ std::string step_json(const Tables& tables, const StepAnswer& answer, const Draw
         ratio = {{"value", rounded(answer.ortho_para_ratio->value)},
                  {"low", rounded(answer.ortho_para_ratio->low)},
                  {"high", rounded(answer.ortho_para_ratio->high)}};
-    const Json document{
-        {"format", "isotally.step.1"},
-        {"tables", {{"version", tables.version}, {"digest", tables.digest}}},
-        {"substrate",
-         {{"smiles", answer.smiles}, {"name", or_null(answer.name)}, {"systematic_name", or_null(answer.systematic_name)}}},
-        {"reaction",
-         {{"id", reaction.id},
-          {"name", reaction.name},
-          {"conditions", reaction.conditions},
-          {"temperature_C", rounded(answer.conditions.temperature_C)},
-          {"acid_percent", reaction.has_acid ? Json(rounded(answer.conditions.acid_percent)) : Json(nullptr)}}},
-        {"level", rounded(draws.level)},
-        {"draws", draws.count},
-        {"seed", draws.seed},
-        {"sites", sites},
-        {"ortho_para_ratio", ratio},
-        {"relative_rate",
-         {{"value", rounded(answer.relative_rate.value)},
-          {"low", rounded(answer.relative_rate.low)},
-          {"high", rounded(answer.relative_rate.high)},
-          {"reference", "benzene"}}},
-        {"measured_by", answer.measured_by},
-        {"cautions", cautions},
-        {"notes", answer.notes}};
+    const Json document{{"format", "isotally.step.1"},
+                        {"tables", {{"version", tables.version}, {"digest", tables.digest}}},
+                        {"substrate",
+                         {{"smiles", answer.smiles},
+                          {"name", or_null(answer.name)},
+                          {"systematic_name", or_null(answer.systematic_name)}}},
+                        {"reaction",
+                         {{"id", reaction.id},
+                          {"name", reaction.name},
+                          {"conditions", reaction.conditions},
+                          {"temperature_C", rounded(answer.conditions.temperature_C)},
+                          {"acid_percent", reaction.has_acid ? Json(rounded(answer.conditions.acid_percent))
+                                                             : Json(nullptr)}}},
+                        {"level", rounded(draws.level)},
+                        {"draws", draws.count},
+                        {"seed", draws.seed},
+                        {"sites", sites},
+                        {"ortho_para_ratio", ratio},
+                        {"relative_rate",
+                         {{"value", rounded(answer.relative_rate.value)},
+                          {"low", rounded(answer.relative_rate.low)},
+                          {"high", rounded(answer.relative_rate.high)},
+                          {"reference", "benzene"}}},
+                        {"measured_by", answer.measured_by},
+                        {"cautions", cautions},
+                        {"notes", answer.notes}};
     return document.dump(indent);
 }
 
-std::string error_json(int exit_status, const std::string& kind, const std::string& where, const std::string& message) {
-    const Json document{{"format", "isotally.error.1"}, {"exit", exit_status}, {"kind", kind}, {"where", where}, {"message", message}};
+std::string error_json(int exit_status, const std::string& kind, const std::string& where,
+                       const std::string& message) {
+    const Json document{{"format", "isotally.error.1"},
+                        {"exit", exit_status},
+                        {"kind", kind},
+                        {"where", where},
+                        {"message", message}};
     return document.dump(-1, ' ', false, Json::error_handler_t::replace);
 }
 

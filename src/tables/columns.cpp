@@ -230,18 +230,17 @@ FileSchema measurements() {
 
 FileSchema states() {
     Column group = required(of_type(Type::group, "group", "substituent, kind:acceptor or principal:ketone"));
-    return {.file = "states.csv",
-            .kind = "states",
-            .holds = "what a medium makes of a group",
-            .keys = {{"reactions", "group", "state", "acid_from"}},
-            .columns = with_provenance({required(of_type(Type::references, "reactions",
-                                                         "reactions or families, separated by blanks")),
-                                        std::move(group),
-                                        required(refers("state", "substituents.csv", "the group it becomes")),
-                                        acid("acid_from", "from this acid strength; both 0 or empty: any"),
-                                        acid("acid_to", "up to this acid strength"),
-                                        required(words("both_forms", "whether the free form reacts as well",
-                                                       {"yes", "minor", "no"}))})};
+    return {
+        .file = "states.csv",
+        .kind = "states",
+        .holds = "what a medium makes of a group",
+        .keys = {{"reactions", "group", "state", "acid_from"}},
+        .columns = with_provenance(
+            {required(of_type(Type::references, "reactions", "reactions or families, separated by blanks")),
+             std::move(group), required(refers("state", "substituents.csv", "the group it becomes")),
+             acid("acid_from", "from this acid strength; both 0 or empty: any"),
+             acid("acid_to", "up to this acid strength"),
+             required(words("both_forms", "whether the free form reacts as well", {"yes", "minor", "no"}))})};
 }
 
 FileSchema bans() {

@@ -11,8 +11,8 @@ namespace isotally {
 namespace {
 
 Provenance provenance_of(const Record& record) {
-    return {record.text("source"), record.text("locator"), record.text("status"), record.text("confidence"),
-            record.text("note"), record.line};
+    return {record.text("source"),     record.text("locator"), record.text("status"),
+            record.text("confidence"), record.text("note"),    record.line};
 }
 
 Figure figure_of(const Record& record) {

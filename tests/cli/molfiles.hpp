@@ -85,7 +85,8 @@ inline std::vector<std::pair<std::string, std::string>> broken_molfiles() {
         {"empty", ""},
         {"one SMILES", "Cc1ccccc1\n"},
         {"a page", "<!doctype html>\n<html>\n<body>\n<p>toluene</p>\n</body>\n</html>\n"},
-        {"an ELF program", "\x7f" "ELF\x02\x01\x01\0\0\0\0\0\0\0\0\0\x03\0>\0\x01\0\0\0"s},
+        {"an ELF program", "\x7f"
+                           "ELF\x02\x01\x01\0\0\0\0\0\0\0\0\0\x03\0>\0\x01\0\0\0"s},
         {"a picture", "\x89PNG\r\n\x1a\n\0\0\0\rIHDR\0\0\0\x10\0\0\0\x10\x08\x06"s},
         {"a picture without zero bytes", "\x89PNG\r\n\x1a\n\r\n\x01\r\nIHDR\r\n\xff\xfe\r\n"},
         {"V2000 cut in the header", first_lines(v2000, 2)},

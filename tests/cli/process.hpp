@@ -21,7 +21,7 @@
 namespace isotally::cli_test {
 
 struct Finished {
-    int exit = -1;    // -1: ended by a signal
+    int exit = -1;  // -1: ended by a signal
     int signal = 0;
     bool in_time = true;
     std::string out, err;
@@ -45,7 +45,8 @@ inline std::array<int, 2> new_pipe() {
     return ends;
 }
 
-[[noreturn]] inline void become(const std::vector<std::string>& words, const Setting& setting, int in, int out, int err) {
+[[noreturn]] inline void become(const std::vector<std::string>& words, const Setting& setting, int in,
+                                int out, int err) {
     dup2(in, STDIN_FILENO);
     dup2(setting.out_file.empty() ? out : open(setting.out_file.c_str(), O_WRONLY), STDOUT_FILENO);
     dup2(err, STDERR_FILENO);

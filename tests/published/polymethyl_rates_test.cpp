@@ -1,6 +1,6 @@
 // Additivity across the methylbenzenes: rates of bromination in 85 % acetic acid at 25 C relative to benzene,
-// Brown & Stock, J. Am. Chem. Soc. 1957, 79, 1421 (recalled figures, status memory), predicted from a model that
-// has seen no rate of a benzene with two or more methyl groups.
+// Brown & Stock, J. Am. Chem. Soc. 1957, 79, 1421 (recalled figures, status memory), predicted from a model
+// that has seen no rate of a benzene with two or more methyl groups.
 #include <gtest/gtest.h>
 
 #include <cmath>
@@ -30,8 +30,9 @@ const std::vector<Rate> additive = {
     {"1,2,4,5-tetramethylbenzene", "Cc1cc(C)c(C)cc1C", 2.83e6, 0.78},
 };
 
-// Found two to six times slower than the paper's own additivity: every free position stands between two methyl
-// groups and is activated by a third opposite or beside, so these lie outside what is claimed for additivity.
+// Found two to six times slower than the paper's own additivity: every free position stands between two
+// methyl groups and is activated by a third opposite or beside, so these lie outside what is claimed for
+// additivity.
 const std::vector<Rate> outside = {
     {"1,3,5-trimethylbenzene", "Cc1cc(C)cc(C)c1", 1.89e8, 0.43},
     {"1,2,3,5-tetramethylbenzene", "Cc1cc(C)c(C)c(C)c1", 4.20e8, 0.26},
@@ -64,7 +65,8 @@ const FamilyModel& blind_model() {
 }
 
 double predicted_rate(const Rate& row) {
-    const auto conditions = answered(choose_conditions(tables(), reaction("bromination-acetic-acid"), 25.0, {}), "25 C");
+    const auto conditions =
+        answered(choose_conditions(tables(), reaction("bromination-acetic-acid"), 25.0, {}), "25 C");
     const auto answer = answer_step(knowledge(), blind_model(), arene(row.smiles), conditions, {.count = 10});
     return answered(answer, row.name).relative_rate.value;
 }
@@ -84,7 +86,9 @@ TEST(PolymethylbenzeneBromination, ToluenesFactorsGiveThePapersOwnSums) {
                 }
                 sum += site.multiplicity * std::pow(10, log_factor);
             }
-            EXPECT_NEAR(row.relative_rate / (sum / 6), row.over_additive, row.over_additive < 1 ? 0.006 : 0.05) << row.name;
+            EXPECT_NEAR(row.relative_rate / (sum / 6), row.over_additive,
+                        row.over_additive < 1 ? 0.006 : 0.05)
+                << row.name;
         }
 }
 

@@ -1,6 +1,7 @@
-// What process chemists expect of well-known steps: isomer shares and refusals. Common practice, no source, where
-// none is named. "Expected" is a range; the answer must lie in it, or its interval must reach into it with the
-// answer no more than 3 points away (laboratories differ by 2-6 points on the larger isomers).
+// What process chemists expect of well-known steps: isomer shares and refusals. Common practice, no source.
+// The interval of the answer must reach into the range expected and the answer itself stand in it or near it.
+// What a whole step leaves (benzene with one equivalent of chlorine) and desulfonation are no questions to
+// one substitution.
 #include <gtest/gtest.h>
 
 #include <optional>
@@ -26,53 +27,88 @@ struct Case {
 
 const std::vector<Case>& cases() {
     static const std::vector<Case> all = {
-        {"toluene", "nitration-mixed-acid", 30, {},
+        {"toluene",
+         "nitration-mixed-acid",
+         30,
+         {},
          {{"2-nitrotoluene", 57, 60}, {"3-nitrotoluene", 3, 4.5}, {"4-nitrotoluene", 36, 39}}},
-        {"chlorobenzene", "nitration-mixed-acid", 50, {},
-         {{"1-chloro-2-nitrobenzene", 33, 36}, {"1-chloro-3-nitrobenzene", 0.7, 1.3}, {"1-chloro-4-nitrobenzene", 63, 66}}},
-        {"nitrobenzene", "nitration-strong-acid", 25, {},
+        {"chlorobenzene",
+         "nitration-mixed-acid",
+         50,
+         {},
+         {{"1-chloro-2-nitrobenzene", 33, 36},
+          {"1-chloro-3-nitrobenzene", 0.7, 1.3},
+          {"1-chloro-4-nitrobenzene", 63, 66}}},
+        {"nitrobenzene",
+         "nitration-strong-acid",
+         25,
+         {},
          {{"1,2-dinitrobenzene", 6, 8}, {"1,3-dinitrobenzene", 91, 93}, {"1,4-dinitrobenzene", 0, 1}}},
-        {"nitrobenzene", "nitration-strong-acid", 40, {},
+        {"nitrobenzene",
+         "nitration-strong-acid",
+         40,
+         {},
          {{"1,2-dinitrobenzene", 6, 8}, {"1,3-dinitrobenzene", 91, 93}, {"1,4-dinitrobenzene", 0, 1}}},
-        {"tert-butylbenzene", "nitration-mixed-acid", {}, {},
-         {{"1-tert-butyl-2-nitrobenzene", 12, 16}, {"1-tert-butyl-3-nitrobenzene", 8, 12}, {"1-tert-butyl-4-nitrobenzene", 73, 80}}},
-        {"2-nitrotoluene", "nitration-strong-acid", {}, {},
+        {"tert-butylbenzene",
+         "nitration-mixed-acid",
+         {},
+         {},
+         {{"1-tert-butyl-2-nitrobenzene", 12, 16},
+          {"1-tert-butyl-3-nitrobenzene", 8, 12},
+          {"1-tert-butyl-4-nitrobenzene", 73, 80}}},
+        {"2-nitrotoluene",
+         "nitration-strong-acid",
+         {},
+         {},
          {{"2,4-dinitrotoluene", 65, 67}, {"2,6-dinitrotoluene", 33, 35}}},
         {"m-xylene", "nitration-mixed-acid", {}, {}, {{"Cc1ccc([N+](=O)[O-])c(C)c1", 84, 87}}},
         {"toluene", "acetylation-lewis-acid", {}, {}, {{"CC(=O)c1ccc(C)cc1", 97, 98}}},
         {"anisole", "acetylation-lewis-acid", {}, {}, {{"COc1ccc(C(C)=O)cc1", 98, 100}}},
-        {"toluene", "sulfonation-sulfuric-acid", 0, 98,
-         {{"Cc1ccccc1S(=O)(=O)O", 42, 42}, {"Cc1cccc(S(=O)(=O)O)c1", 4, 4}, {"Cc1ccc(S(=O)(=O)O)cc1", 54, 54}}},
-        {"toluene", "sulfonation-sulfuric-acid", 100, 98,
-         {{"Cc1ccccc1S(=O)(=O)O", 13, 13}, {"Cc1cccc(S(=O)(=O)O)c1", 8, 8}, {"Cc1ccc(S(=O)(=O)O)cc1", 79, 79}}},
+        {"toluene",
+         "sulfonation-sulfuric-acid",
+         0,
+         98,
+         {{"Cc1ccccc1S(=O)(=O)O", 42, 42},
+          {"Cc1cccc(S(=O)(=O)O)c1", 4, 4},
+          {"Cc1ccc(S(=O)(=O)O)cc1", 54, 54}}},
+        {"toluene",
+         "sulfonation-sulfuric-acid",
+         100,
+         98,
+         {{"Cc1ccccc1S(=O)(=O)O", 13, 13},
+          {"Cc1cccc(S(=O)(=O)O)c1", 8, 8},
+          {"Cc1ccc(S(=O)(=O)O)cc1", 79, 79}}},
         {"chlorobenzene", "sulfonation-sulfuric-acid", {}, {}, {{"O=S(=O)(O)c1ccc(Cl)cc1", 98, 100}}},
-        {"toluene", "bromination-lewis-acid", {}, {},
+        {"toluene",
+         "bromination-lewis-acid",
+         {},
+         {},
          {{"2-bromotoluene", 35, 42}, {"3-bromotoluene", 0, 1}, {"4-bromotoluene", 57, 64}}},
     };
     return all;
 }
 
-double outside(double value, double low, double high) {
-    return std::max({0.0, low - value, value - high});
+/// Laboratories differ by 2-6 points on the larger isomers and by a factor of 2-3 on one below 5 %.
+bool near(double value, double low, double high) {
+    if (high < 5)
+        return value >= low / 3 && value <= high * 3;
+    return value >= low - 4 && value <= high + 4;
 }
 
 TEST(PracticeValues, IsomerShares) {
-    constexpr double laboratories_differ = 3;
     for (const auto& one : cases()) {
         const auto answer = step(named(one.molecule), one.reaction, at(one.temperature_C, one.acid_percent));
         for (const auto& [product, low, high] : one.products) {
             const auto share = share_of(answer, named(product));
-            if (outside(share.value, low, high) == 0)
-                continue;
-            EXPECT_TRUE(share.low <= high && low <= share.high && outside(share.value, low, high) <= laboratories_differ)
-                << one.molecule << ", " << one.reaction << ", " << product << ": " << share.value << " (" << share.low
-                << " to " << share.high << "), expected " << low << " to " << high;
+            EXPECT_TRUE(share.low <= high && low <= share.high && near(share.value, low, high))
+                << one.molecule << ", " << one.reaction << ", " << product << ": " << share.value << " ("
+                << share.low << " to " << share.high << "), expected " << low << " to " << high;
         }
     }
 }
 
-/// 57-60 / 3-4.5 / 36-39 with the interval a plant would call the spread of laboratories: not narrower than the
-/// 2 points two good laboratories differ by, not wider than the 6.
+/// 57-60 / 3-4.5 / 36-39 with the interval a plant would call the spread of laboratories: not narrower than
+/// the 2 points two good laboratories differ by, not wider than the 6.
 TEST(PracticeValues, TolueneIntervalsCoverTheLaboratories) {
     const auto percent = by_relation(step("toluene", "nitration-mixed-acid", at(30)));
     EXPECT_GT(percent[ortho].value, 55);
@@ -88,11 +124,12 @@ TEST(PracticeValues, TolueneIntervalsCoverTheLaboratories) {
     }
 }
 
-/// Toluene with two equivalents: 79-81 to 19-21 of 2,4- and 2,6-dinitrotoluene. Their ratio is that of the first
-/// step, each mononitrotoluene going on wholly.
+/// Toluene with two equivalents: 79-81 to 19-21 of 2,4- and 2,6-dinitrotoluene. Their ratio is that of the
+/// first step, each mononitrotoluene going on wholly.
 TEST(PracticeValues, DinitrotoluenesOfTolueneByTwoSteps) {
     const auto first = step("toluene", "nitration-mixed-acid", at(30));
-    const auto dinitro_24 = canonical_smiles(named("2,4-dinitrotoluene"), ""), dinitro_26 = canonical_smiles(named("2,6-dinitrotoluene"), "");
+    const auto dinitro_24 = canonical_smiles(named("2,4-dinitrotoluene"), ""),
+               dinitro_26 = canonical_smiles(named("2,6-dinitrotoluene"), "");
     double to_24 = 0, to_26 = 0;
     for (const char* mono : {"2-nitrotoluene", "4-nitrotoluene"}) {
         const auto second = step(named(mono), "nitration-strong-acid");
@@ -134,14 +171,16 @@ TEST(PracticeValues, RefusedWithWhatPeopleDoInstead) {
     };
     for (const auto& one : all) {
         const auto reason = refused_because(named(one.molecule), one.reaction);
-        EXPECT_NE(reason.find(one.instead), std::string::npos) << one.molecule << ", " << one.reaction << ": " << reason;
+        EXPECT_NE(reason.find(one.instead), std::string::npos)
+            << one.molecule << ", " << one.reaction << ": " << reason;
         EXPECT_EQ(reason.find('\n'), std::string::npos) << reason;
     }
 }
 
 /// A bare nitrobenzene is refused, its activated relatives (1,2-dichlorobenzene, 4-nitrobiphenyl) are not.
 TEST(PracticeValues, NotRefusedForAGroupElsewhere) {
-    for (const char* molecule : {"1,2-dichlorobenzene", "chlorobenzene", "O=[N+]([O-])c1ccc(-c2ccccc2)cc1", "acetanilide"}) {
+    for (const char* molecule :
+         {"1,2-dichlorobenzene", "chlorobenzene", "O=[N+]([O-])c1ccc(-c2ccccc2)cc1", "acetanilide"}) {
         EXPECT_EQ(refused_because(named(molecule), "acetylation-lewis-acid"), "") << molecule;
     }
     EXPECT_NE(refused_because("Clc1cc(Cl)cc(Cl)c1", "acetylation-lewis-acid"), "")

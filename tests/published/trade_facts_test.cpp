@@ -16,20 +16,22 @@ std::string lead_of(const StepAnswer& answer) {
 }
 
 TEST(TradeFacts, ChlorobenzeneIsSulfonatedMainlyPara) {
-    for (const auto& reaction : Words{"sulfonation-sulfuric-acid", "sulfonation-sulfur-trioxide", "chlorosulfonation"}) {
+    for (const auto& reaction :
+         Words{"sulfonation-sulfuric-acid", "sulfonation-sulfur-trioxide", "chlorosulfonation"}) {
         const auto percent = by_relation(step("chlorobenzene", reaction));
         EXPECT_GT(percent[para].value, 90) << reaction;
         EXPECT_GT(percent[para].low, 50) << reaction << ": mainly, whatever the interval";
     }
 }
 
-/// Halogenation, alkylation with a bulky group and hot sulfonation: there para leads although it is one position
-/// against two. Not nitration, where ortho leads (70.6 to 29.4 in dilute acid, Coombes, Golding & Hadjigeorgiou,
-/// J. Chem. Soc. Perkin Trans. 2 1979, 496) and not chlorination by hypochlorous acid; nor reactions in which the
-/// oxygen binds the reagent (formylation, small alkyl groups).
+/// Halogenation, alkylation with a bulky group and hot sulfonation: there para leads although it is one
+/// position against two. Not nitration, where ortho leads (70.6 to 29.4 in dilute acid, Coombes, Golding &
+/// Hadjigeorgiou, J. Chem. Soc. Perkin Trans. 2 1979, 496) and not chlorination by hypochlorous acid; nor
+/// reactions in which the oxygen binds the reagent (formylation, small alkyl groups).
 TEST(TradeFacts, PhenolReactsAtParaBeforeOrtho) {
-    for (const auto& reaction : Words{"bromination-acetic-acid", "bromination-lewis-acid", "chlorination-acetic-acid",
-                                      "chlorination-lewis-acid", "iodination-oxidative", "tert-butylation-lewis-acid"}) {
+    for (const auto& reaction :
+         Words{"bromination-acetic-acid", "bromination-lewis-acid", "chlorination-acetic-acid",
+               "chlorination-lewis-acid", "iodination-oxidative", "tert-butylation-lewis-acid"}) {
         const auto percent = by_relation(step("phenol", reaction));
         EXPECT_GT(percent[para].value, percent[ortho].value) << reaction;
     }
@@ -39,12 +41,14 @@ TEST(TradeFacts, PhenolReactsAtParaBeforeOrtho) {
 
 /// Rings whose carbon chain begins with a carbonyl, in every nitrating medium that is used on them.
 TEST(TradeFacts, CarbonylBearingRingsAreNitratedMeta) {
-    for (const auto& molecule : Words{"benzaldehyde", "acetophenone", "CCC(=O)c1ccccc1", "benzoic acid", "methyl benzoate",
-                                      "ethyl benzoate", "NC(=O)c1ccccc1"})
-        for (const auto& reaction : Words{"nitration-mixed-acid", "nitration-strong-acid", "nitration-nitric-acid"}) {
+    for (const auto& molecule : Words{"benzaldehyde", "acetophenone", "CCC(=O)c1ccccc1", "benzoic acid",
+                                      "methyl benzoate", "ethyl benzoate", "NC(=O)c1ccccc1"})
+        for (const auto& reaction :
+             Words{"nitration-mixed-acid", "nitration-strong-acid", "nitration-nitric-acid"}) {
             const auto percent = by_relation(step(named(molecule), reaction));
             EXPECT_GT(percent[meta].value, 50) << molecule << ", " << reaction;
-            EXPECT_GT(percent[meta].value, percent[ortho].value + percent[para].value) << molecule << ", " << reaction;
+            EXPECT_GT(percent[meta].value, percent[ortho].value + percent[para].value)
+                << molecule << ", " << reaction;
         }
     EXPECT_EQ(lead_of(step("O=C(c1ccccc1)c1ccccc1", "nitration-strong-acid")),
               canonical_smiles("O=C(c1ccccc1)c1cccc([N+](=O)[O-])c1", ""));
@@ -53,7 +57,8 @@ TEST(TradeFacts, CarbonylBearingRingsAreNitratedMeta) {
 TEST(TradeFacts, NitrobenzeneUndergoesNoFriedelCraftsReaction) {
     int asked = 0;
     for (const auto& reaction : tables().reactions) {
-        if (reaction.family != "alkylation" && reaction.family != "acylation" && reaction.family != "formylation")
+        if (reaction.family != "alkylation" && reaction.family != "acylation" &&
+            reaction.family != "formylation")
             continue;
         ++asked;
         EXPECT_NE(refused_because("nitrobenzene", reaction.id), "") << reaction.id << " was answered";
@@ -61,7 +66,8 @@ TEST(TradeFacts, NitrobenzeneUndergoesNoFriedelCraftsReaction) {
     EXPECT_GE(asked, 9);
 }
 
-/// One new bromine, with iron: the alkyl group leads to its ortho position and nitro to its meta position, the same.
+/// One new bromine, with iron: the alkyl group leads to its ortho position and nitro to its meta position,
+/// the same.
 TEST(TradeFacts, ARingWithAlkylAndNitroParaIsBrominatedNextToTheAlkyl) {
     for (const auto& alkyl : Words{"C", "CC", "CCC", "CC(C)"}) {
         const auto molecule = alkyl + "c1ccc([N+](=O)[O-])cc1";
@@ -71,13 +77,14 @@ TEST(TradeFacts, ARingWithAlkylAndNitroParaIsBrominatedNextToTheAlkyl) {
     }
 }
 
-/// Para and ortho lead on every halobenzene. Slower than benzene: chlorine, bromine and iodine everywhere; fluorine
-/// only in nitration (in bromination fluorobenzene is about as fast as benzene, 1.16, Stock & Brown, Adv. Phys. Org.
-/// Chem. 1963, 1, 35, a recalled figure).
+/// Para and ortho lead on every halobenzene. Slower than benzene: chlorine, bromine and iodine everywhere;
+/// fluorine only in nitration (in bromination fluorobenzene is about as fast as benzene, 1.16, Stock & Brown,
+/// Adv. Phys. Org. Chem. 1963, 1, 35, a recalled figure).
 TEST(TradeFacts, HalogensDeactivateYetDirectOrthoAndPara) {
     for (const auto& halogen : Words{"F", "Cl", "Br", "I"})
-        for (const auto& reaction : Words{"nitration-mixed-acid", "nitration-strong-acid", "nitration-nitric-acid",
-                                          "bromination-lewis-acid", "sulfonation-sulfuric-acid", "acetylation-lewis-acid"}) {
+        for (const auto& reaction :
+             Words{"nitration-mixed-acid", "nitration-strong-acid", "nitration-nitric-acid",
+                   "bromination-lewis-acid", "sulfonation-sulfuric-acid", "acetylation-lewis-acid"}) {
             const auto answer = step(halogen + "c1ccccc1", reaction);
             const auto percent = by_relation(answer);
             EXPECT_GT(percent[ortho].value + percent[para].value, 90) << halogen << ", " << reaction;

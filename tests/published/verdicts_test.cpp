@@ -1,5 +1,6 @@
-// Answers that a process chemist has read one by one (verdicts.csv): each figure must still hold within the tolerance
-// that stands beside it, and what was refused must be refused. A row with an empty product is a refusal.
+// Answers that a process chemist has read one by one (verdicts.csv): each figure must still hold within the
+// tolerance that stands beside it, and what was refused must be refused. A row with an empty product is a
+// refusal.
 #include <gtest/gtest.h>
 
 #include <charconv>
@@ -53,9 +54,10 @@ const std::vector<Verdict>& verdicts() {
                 EXPECT_NE(found, column.end()) << "no column " << name;
                 return found == column.end() ? std::string() : row.fields.at(found->second);
             };
-            rows.push_back({row.line, field("molecule"), field("reaction"), field("product"), field("verdict"), field("reason"),
-                            number(field("temperature_C"), where), number(field("acid_percent"), where),
-                            number(field("percent"), where), number(field("tolerance"), where)});
+            rows.push_back({row.line, field("molecule"), field("reaction"), field("product"),
+                            field("verdict"), field("reason"), number(field("temperature_C"), where),
+                            number(field("acid_percent"), where), number(field("percent"), where),
+                            number(field("tolerance"), where)});
         }
         return rows;
     }();
@@ -89,7 +91,10 @@ TEST(Verdicts, EveryFigureHolds) {
         ASSERT_TRUE(row.percent && row.tolerance) << where << ": percent and tolerance expected";
         EXPECT_GT(*row.tolerance, 0) << where;
         EXPECT_LE(*row.tolerance, 15) << where << ": so wide a tolerance checks nothing";
-        ASSERT_EQ(refusal(answer), nullptr) << where << ": " << refusal(answer)->reason;
+        if (const auto* refused = refusal(answer)) {
+            ADD_FAILURE() << where << " was refused: " << refused->reason;
+            continue;
+        }
         const auto share = share_of(std::get<StepAnswer>(answer), named(row.product));
         EXPECT_NEAR(share.value, *row.percent, *row.tolerance) << where << ", " << row.product;
     }
