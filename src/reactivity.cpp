@@ -142,17 +142,17 @@ std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, 
 
 namespace {
 
-/// "its best position reacts about 10^8 times slower than one of benzene, and the reaction stops at 10^6 ...".
+/// "its best position is about 10^5 times slower than one of benzene, the limit of this reaction is about
+/// 10^3 times slower".
 std::string too_slow(double log10_best, double log10_floor) {
-    const auto beside_benzene = [](double log10_factor) {
-        if (std::abs(log10_factor) < 1)
-            return fmt::format("about {:.1g} times as fast as", std::pow(10.0, log10_factor));
-        return fmt::format("about 10^{:.0f} times {} than", std::abs(log10_factor),
+    const auto times = [](double log10_factor) {
+        if (std::abs(log10_factor) < 0.5)
+            return std::string("about as fast");
+        return fmt::format("about 10^{:.0f} times {}", std::abs(log10_factor),
                            log10_factor < 0 ? "slower" : "faster");
     };
-    return fmt::format(
-        "its best position reacts {} one of benzene, and the reaction stops at {} that",
-        beside_benzene(log10_best), beside_benzene(log10_floor));
+    return fmt::format("its best position is {} {} one of benzene, the limit of this reaction is {}",
+                       times(log10_best), std::abs(log10_best) < 0.5 ? "as" : "than", times(log10_floor));
 }
 
 }  // namespace

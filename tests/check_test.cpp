@@ -147,16 +147,21 @@ TEST(Check, LogScoreIsTheNormalDensityOfTheLogRatio) {
     EXPECT_EQ(record.leading_right, at.mean[six] < at.mean[four]);
 }
 
-TEST(Check, IntervalsHoldAboutAsOftenAsTheySay) {
-    const auto checked = check_family(knowledge(), "nitration", {});
-    ASSERT_GT(checked.size(), 60u);
-    const auto s = score("nitration", checked);
+TEST(Check, BetterThanTheFirstTrial) {
+    // Nitration of di- and polysubstituted rings in nitric or sulfuric acid, each compound left out: a first
+    // trial gave 8.8 points, leaders right in 29 of 36, and a coverage of 0.80 (design of the model, section
+    // 5).
+    auto checked = check_family(knowledge(), "nitration", {});
+    std::erase_if(checked, [](const CheckedRecord& one) {
+        return one.groups < 2 || one.reaction == "nitration-acetyl-nitrate" ||
+               one.reaction == "nitration-nitronium-salt";
+    });
+    const auto s = score("nitration-poly", checked);
+    ASSERT_GE(s.records, 36);
+    EXPECT_LT(s.mean_absolute_error_points, 8.8);
+    EXPECT_GT(s.leading_isomer_right, 29.0 / 36);
     EXPECT_GT(s.coverage_90, 0.80);
     EXPECT_LT(s.coverage_90, 0.98);
-    // A first trial on the disubstituted rings gave 10.0 points and leaders right in 29 of 36 (design,
-    // section 5).
-    EXPECT_LT(s.mean_absolute_error_points, 10.0);
-    EXPECT_GT(s.leading_isomer_right, 29.0 / 36);
 }
 
 }  // namespace

@@ -185,8 +185,13 @@ TEST(Shares, OneDrawIsEnoughForAnAnswer) {
 }
 
 TEST(Shares, BenzeneIsOne) {
+    int answers = 0;
     for (const auto& row : tables().reactions) {
+        const auto floor = row.figures.find("floor");
+        if (floor != row.figures.end() && floor->second.value > 1)
+            continue;  // for rings richer than benzene only
         const auto answer = step("benzene", row.id);
+        ++answers;
         ASSERT_EQ(answer.shares.size(), 1u) << row.id;
         EXPECT_EQ(answer.shares[0].site.multiplicity, 6);
         EXPECT_NEAR(answer.shares[0].percent.value, 100, 1e-9);
@@ -195,6 +200,7 @@ TEST(Shares, BenzeneIsOne) {
         EXPECT_NEAR(answer.relative_rate.high, 1, 1e-4) << row.id;
         EXPECT_FALSE(answer.ortho_para_ratio) << "no group to be ortho to";
     }
+    EXPECT_GE(answers, 25);
 }
 
 TEST(Shares, OrthoParaRatioOfRingsWithOneGroup) {

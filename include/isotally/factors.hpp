@@ -91,7 +91,8 @@ const GroupState* state_of(const Knowledge& knowledge, const Conditions& conditi
 /// is q P q' - q P H' S^-1 H P q'.
 struct FamilyModel;
 
-/// Fits a family to all observations of it but those left out (by compound, canonical SMILES).
+/// Fits a family to all observations of it but those left out (by compound, canonical SMILES). The knowledge
+/// must outlive the model.
 std::shared_ptr<const FamilyModel> fit_family(const Knowledge& knowledge, std::string_view family,
                                               std::string_view left_out_compound = {});
 

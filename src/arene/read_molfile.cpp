@@ -35,7 +35,7 @@ unsigned count_field(const std::string& line, std::size_t at, std::size_t number
     unsigned value = 0;
     const auto [end, problem] = std::from_chars(field.data(), field.data() + field.size(), value);
     if (field.empty() || problem != std::errc() || end != field.data() + field.size())
-        fail(number_of_line, fmt::format("the counts line gives no number of {}", what));
+        fail(number_of_line, fmt::format("found \"{}\" where the number of {} was expected", field, what));
     return value;
 }
 
@@ -50,6 +50,10 @@ void check_v2000(const std::vector<std::string>& lines) {
     if (lines.size() < 4u + atoms + bonds)
         fail(4, fmt::format("the counts line promises {} atoms and {} bonds, but only {} lines follow", atoms,
                             bonds, lines.size() - 4));
+    for (std::size_t i = 4u + atoms; i < 4u + atoms + bonds; ++i)
+        for (const std::size_t at : {std::size_t{0}, std::size_t{3}})
+            if (const unsigned end = count_field(lines[i], at, i + 1, "an atom"); end < 1 || end > atoms)
+                fail(i + 1, fmt::format("a bond to atom {}, but the atoms are numbered 1 to {}", end, atoms));
     for (std::size_t i = 4; i < 4u + atoms; ++i)
         if (lines[i].size() < 34)
             fail(i + 1, "this is no atom line (coordinates and a symbol were expected)");

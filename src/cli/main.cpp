@@ -1,5 +1,8 @@
 // The command line: options, help and exit statuses. All answers are made elsewhere.
 #include <CLI/CLI.hpp>
+#include <algorithm>
+#include <charconv>
+#include <cmath>
 #include <csignal>
 #include <iostream>
 #include <sstream>
@@ -19,7 +22,25 @@ constexpr const char* quoting =
 constexpr const char* standing = "An estimate replaces neither calorimetry nor a qualified person; local "
                                  "rules and licensed practice come first.";
 
-/// CLI11 leaves "nan" and "inf" through; the program does not.
+/// CLI11 leaves "nan", "inf" and signs of whole numbers through; the program does not.
+template <class Number>
+std::string check_number(const std::string& text, const char* expected) {
+    Number value{};
+    const auto [end, problem] = std::from_chars(text.data(), text.data() + text.size(), value);
+    if (problem == std::errc() && end == text.data() + text.size() &&
+        std::isfinite(static_cast<double>(value)))
+        return "";
+    return "found \"" + cli::printable(text) + "\", expected " + expected;
+}
+
+const CLI::Validator finite_number(
+    [](const std::string& text) { return check_number<double>(text, "a number such as 30 or 79.5"); }, "");
+const CLI::Validator whole_number(
+    [](const std::string& text) {
+        return check_number<std::uint64_t>(text, "a whole number of at most 20 digits");
+    },
+    "");
+
 struct Options {
     cli::StepRequest step;
     TablesRequest tables;
@@ -43,11 +64,15 @@ void add_step(CLI::App& program, Options& options) {
         ->type_name("MOLECULE");
     step->add_option("--reaction", request.reaction, "Reaction id (isotally tables reactions lists them)")
         ->type_name("ID");
-    step->add_option("--temperature", request.temperature_C, "Temperature")->type_name("C");
+    step->add_option("--temperature", request.temperature_C, "Temperature")
+        ->check(finite_number)
+        ->type_name("C");
     step->add_option("--acid-percent", request.acid_percent,
                      "Sulfuric acid, weight percent without the nitric acid")
+        ->check(finite_number)
         ->type_name("W");
     step->add_option("--level", request.draws.level, "How often the intervals should hold")
+        ->check(finite_number)
         ->check(CLI::Range(0.01, 0.999))
         ->capture_default_str()
         ->type_name("P");
@@ -56,6 +81,7 @@ void add_step(CLI::App& program, Options& options) {
         ->capture_default_str()
         ->type_name("N");
     step->add_option("--seed", request.draws.seed, "Seed of the draws")
+        ->check(whole_number)
         ->capture_default_str()
         ->type_name("N");
     auto* json = step->add_flag("--json", request.json, "One JSON document on standard output");
@@ -97,13 +123,18 @@ bool wants_json(int argc, char** argv) {
     return false;
 }
 
-/// CLI11's complaint as one sentence.
-Error usage_error(const CLI::ParseError& e) {
-    std::string text = e.what();
-    for (auto& c : text)
-        if (c == '\n')
-            c = ' ';
-    return {ErrorKind::usage, "command line", text + " (isotally --help tells more)"};
+/// CLI11's complaint as one sentence; an unknown command is named, with the nearest known one.
+Error usage_error(const CLI::ParseError& e, const CLI::App& program, int argc, char** argv) {
+    std::vector<std::string> commands;
+    for (const auto* command : program.get_subcommands({}))
+        commands.push_back(command->get_name());
+    if (argc > 1 && std::find(commands.begin(), commands.end(), argv[1]) == commands.end()) {
+        const std::string word = cli::printable(argv[1]), nearest = nearest_word(word, commands);
+        return {ErrorKind::usage, "command line",
+                "unknown " + std::string(word.starts_with("-") ? "option" : "command") + " \"" + word + "\"" +
+                    (nearest.empty() ? "" : ", is " + nearest + " meant?") + " (isotally --help tells more)"};
+    }
+    return {ErrorKind::usage, "command line", cli::printable(e.what()) + " (isotally --help tells more)"};
 }
 
 int run(int argc, char** argv, std::ostream& out) {
@@ -127,7 +158,7 @@ int run(int argc, char** argv, std::ostream& out) {
         out << e.what() << '\n';
         return 0;
     } catch (const CLI::ParseError& e) {
-        throw usage_error(e);
+        throw usage_error(e, program, argc, argv);
     }
     if (program.got_subcommand("step"))
         return cli::step_command(options.step, load(options), std::cin, out, std::cerr);
@@ -144,6 +175,7 @@ int run(int argc, char** argv, std::ostream& out) {
 
 int main(int argc, char** argv) {
     std::ios::sync_with_stdio(false);
+    std::signal(SIGPIPE, SIG_DFL);  // a reader that goes away ends the program, even if the parent ignores it
     const bool json = wants_json(argc, argv);
     try {
         const int status = run(argc, argv, std::cout);

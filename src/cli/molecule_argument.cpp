@@ -4,8 +4,11 @@
 
 #include <algorithm>
 #include <cctype>
+#include <filesystem>
 #include <fstream>
 #include <iterator>
+
+#include "status.hpp"
 
 namespace isotally::cli {
 namespace {
@@ -20,7 +23,7 @@ std::string lower_case(std::string text) {
 
 Answer<Arene> from_molfile(const Knowledge& knowledge, const std::string& path) {
     std::ifstream file(path, std::ios::binary);
-    if (!file)
+    if (!file || std::filesystem::is_directory(path))
         throw Error(ErrorKind::input, path, "the molfile can't be opened");
     std::string text((std::istreambuf_iterator<char>(file)), {});
     if (file.bad() || (text.empty() && !file.eof()))
@@ -67,8 +70,8 @@ Answer<Arene> read_molecule(const Knowledge& knowledge, const std::string& text)
         return parse_arene(knowledge.tables, knowledge.groups, text);
     } catch (const Error& e) {
         throw Error(e.kind, e.where,
-                    fmt::format("\"{}\" is neither a known name nor a SMILES: {}{}", text.substr(0, 60),
-                                e.what(), name_hint(knowledge.tables, text)));
+                    fmt::format("\"{}\" is neither a known name nor a SMILES: {}{}",
+                                printable(text.substr(0, 60)), e.what(), name_hint(knowledge.tables, text)));
     }
 }
 
@@ -82,7 +85,8 @@ int read_reaction(const Tables& tables, const std::string& id) {
     const auto nearest = nearest_word(id, known);
     throw Error(ErrorKind::usage, "option --reaction",
                 fmt::format("there is no reaction \"{}\"{}; isotally tables reactions lists them",
-                            id.substr(0, 60), nearest.empty() ? "" : " (the nearest is " + nearest + ")"));
+                            printable(id.substr(0, 60)),
+                            nearest.empty() ? "" : " (the nearest is " + nearest + ")"));
 }
 
 }  // namespace isotally::cli

@@ -42,6 +42,15 @@ std::string kind_name(ErrorKind kind) {
     return "defect";
 }
 
+std::string printable(const std::string& text) {
+    constexpr std::size_t longest = 200;
+    std::string out = text.substr(0, longest);
+    for (auto& c : out)
+        if (c < ' ' || c > '~')
+            c = '?';
+    return out + (text.size() > longest ? "..." : "");
+}
+
 int refuse(const Refusal& refused, bool json, std::ostream& out, std::ostream& err) {
     err << "isotally: " << refused.reason << '\n';
     if (json)

@@ -22,6 +22,9 @@ enum class Status {
 Status status_of(ErrorKind kind);
 std::string kind_name(ErrorKind kind);
 
+/// The text with everything that is not printable ASCII as ?, cut after 200 characters: fit for a message.
+std::string printable(const std::string& text);
+
 /// One sentence to `err`; with `json` also the error document to `out`. Returns the exit status.
 int refuse(const Refusal& refused, bool json, std::ostream& out, std::ostream& err);
 int fail(const Error& error, bool json, std::ostream& out, std::ostream& err);

@@ -46,54 +46,66 @@ Answer<StepAnswer> answer(const StepRequest& request, const Knowledge& knowledge
 
 /// The reactions that go on this ring, one line each; wrong use all the same, as no reaction was named.
 int list_reactions(const StepRequest& request, const Knowledge& knowledge, const Arene& arene,
-                   std::ostream& err) {
+                   std::ostream& out, std::ostream& err) {
     Models models;
     StepRequest quick = request;
     quick.draws.count = 1;
-    std::string lines;
+    quick.temperature_C.reset();
+    quick.acid_percent.reset();
+    std::string lines, ids;
     for (std::size_t i = 0; i < knowledge.tables.reactions.size(); ++i) {
         const auto& reaction = knowledge.tables.reactions[i];
-        quick.temperature_C.reset();
-        quick.acid_percent.reset();
         const auto step = answer(quick, knowledge, models, static_cast<int>(i), arene);
         if (const auto* found = std::get_if<StepAnswer>(&step)) {
             const auto& lead = found->shares.front();
             lines += fmt::format("  {:<34}{:3.0f} % {}\n", reaction.id, lead.percent.value,
                                  lead.product_name.value_or(lead.site.product));
+            ids += (ids.empty() ? "" : ", ") + reaction.id;
         }
     }
-    err << "--reaction is missing; on " << request.molecule
-        << (lines.empty() ? " no known reaction goes\n" : " these go (largest isomer):\n") << lines;
-    return static_cast<int>(Status::usage);
+    const std::string found = ids.empty() ? "none that is known goes on this ring" : "these go on this ring";
+    const Error error(ErrorKind::usage, "option --reaction",
+                      "no reaction given; " + found + (request.json && !ids.empty() ? ": " + ids : ""));
+    const int status = fail(error, request.json, out, err);
+    err << lines;
+    return status;
 }
 
-/// One line of a list: SMILES, optionally a blank and a name.
+/// One line of a list: SMILES, optionally a blank and a name. A failure is an answer of its own, and a
+/// sentence with the number of the line to `err`.
 std::string answer_line(const StepRequest& request, const Knowledge& knowledge, Models& models, int reaction,
-                        std::string line) {
-    if (!line.empty() && line.back() == '\r')
-        line.pop_back();
-    const auto blank = line.find_first_of(" \t");
+                        const std::string& line, std::size_t number, std::ostream& err) {
+    const auto failed = [&](int status, const std::string& kind, const std::string& where,
+                            const std::string& message) {
+        err << "isotally: line " << number << ": " << message << '\n';
+        return error_json(status, kind, fmt::format("line {}, {}", number, where), message);
+    };
     try {
-        const auto arene = read_molecule(knowledge, line.substr(0, blank));
+        const auto arene = read_molecule(knowledge, line.substr(0, line.find_first_of(" \t")));
         if (const auto* refused = refusal(arene))
-            return error_json(1, "refused", refused->where, refused->reason);
+            return failed(1, "refused", refused->where, refused->reason);
         const auto step = answer(request, knowledge, models, reaction, std::get<Arene>(arene));
         if (const auto* refused = refusal(step))
-            return error_json(1, "refused", refused->where, refused->reason);
+            return failed(1, "refused", refused->where, refused->reason);
         return step_json(knowledge.tables, std::get<StepAnswer>(step), request.draws, -1);
     } catch (const Error& e) {
-        return error_json(static_cast<int>(status_of(e.kind)), kind_name(e.kind), e.where, e.what());
+        return failed(static_cast<int>(status_of(e.kind)), kind_name(e.kind), e.where, e.what());
     }
 }
 
 int answer_list(const StepRequest& request, const Knowledge& knowledge, int reaction, std::istream& in,
-                std::ostream& out) {
+                std::ostream& out, std::ostream& err) {
+    constexpr std::string_view byte_order_mark = "\xef\xbb\xbf";
     Models models;
     std::string line;
-    while (std::getline(in, line)) {
-        if (line.find_first_not_of(" \t\r") == std::string::npos)
+    for (std::size_t number = 1; std::getline(in, line); ++number) {
+        if (number == 1 && line.starts_with(byte_order_mark))
+            line.erase(0, byte_order_mark.size());
+        if (!line.empty() && line.back() == '\r')
+            line.pop_back();
+        if (line.find_first_not_of(" \t") == std::string::npos)
             continue;
-        out << answer_line(request, knowledge, models, reaction, line) << '\n';
+        out << answer_line(request, knowledge, models, reaction, line, number, err) << '\n';
     }
     return 0;
 }
@@ -109,13 +121,17 @@ int step_command(const StepRequest& request, const Knowledge& knowledge, std::is
             throw Error(ErrorKind::usage, "option --reaction", "a list needs a reaction");
         if (request.csv)
             throw Error(ErrorKind::usage, "option --csv", "a list is answered in JSON lines");
-        return answer_list(request, knowledge, reaction, in, out);
+        const auto conditions =
+            choose_conditions(tables, reaction, request.temperature_C, request.acid_percent);
+        if (const auto* refused = refusal(conditions))
+            return refuse(*refused, true, out, err);
+        return answer_list(request, knowledge, reaction, in, out, err);
     }
     const auto arene = read_molecule(knowledge, request.molecule);
     if (const auto* refused = refusal(arene))
         return refuse(*refused, request.json, out, err);
     if (reaction < 0)
-        return list_reactions(request, knowledge, std::get<Arene>(arene), err);
+        return list_reactions(request, knowledge, std::get<Arene>(arene), out, err);
     Models models;
     const auto step = answer(request, knowledge, models, reaction, std::get<Arene>(arene));
     if (const auto* refused = refusal(step))
