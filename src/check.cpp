@@ -3,6 +3,9 @@
 #include <Eigen/Cholesky>
 #include <Eigen/Core>
 #include <algorithm>
+#include <array>
+#include <boost/random/mersenne_twister.hpp>
+#include <boost/random/uniform_int_distribution.hpp>
 #include <cmath>
 #include <map>
 #include <numbers>
@@ -62,17 +65,17 @@ CheckedRecord check_record(const Knowledge& knowledge, const FamilyModel& model,
     const auto& reaction = tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)];
     const auto found = sites(arene, reaction.new_group);
 
-    CheckedRecord out{record.id,
-                      record.reaction,
-                      record.substrate,
-                      record.use,
-                      record.from.source,
-                      record.from.status,
-                      0,
-                      record.complete && record.use != "partial" && record.use != "bound",
-                      false,
-                      log_density(observation, factors),
-                      {}};
+    CheckedRecord out;
+    out.id = record.id;
+    out.reaction = record.reaction;
+    out.family = family;
+    out.substrate = record.substrate;
+    out.use = record.use;
+    out.source = record.from.source;
+    out.status = record.from.status;
+    out.conditions = observation.conditions;
+    out.complete = record.complete && record.use != "partial" && record.use != "bound";
+    out.log_score = log_density(observation, factors);
     const auto& groups = observation.sites.front().groups;
     out.groups = static_cast<int>(6 - std::count(groups.begin(), groups.end(), -1));
     std::vector<double> observed(found.size(), 0), predicted(found.size(), 0);
@@ -109,36 +112,158 @@ std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_
     return checked;
 }
 
-Scores score(std::string_view name, const std::vector<CheckedRecord>& records) {
-    Scores s;
-    s.name = name;
-    s.records = static_cast<int>(records.size());
-    double isomers = 0, leading = 0, scored = 0;
-    for (const auto& record : records) {
-        leading += record.leading_right;
-        if (!record.complete)
+namespace {
+
+constexpr int resamples = 1000;
+
+bool counts(const CheckedIsomer& isomer) {
+    return isomer.observed_percent > 1 || isomer.predicted_percent > 1;
+}
+
+/// Sums over some records, from which every score follows.
+struct Sums {
+    double records = 0, leading = 0, complete = 0, log_score = 0, isomers = 0, error = 0, covered = 0,
+           width = 0;
+
+    void add(const Sums& other) {
+        records += other.records, leading += other.leading, complete += other.complete;
+        log_score += other.log_score, isomers += other.isomers, error += other.error;
+        covered += other.covered, width += other.width;
+    }
+};
+
+Sums sums_of(const CheckedRecord& record) {
+    Sums sums;
+    sums.records = 1;
+    sums.leading = record.leading_right;
+    if (!record.complete)
+        return sums;
+    sums.complete = 1;
+    sums.log_score = record.log_score;
+    for (const auto& isomer : record.isomers) {
+        if (!counts(isomer))
             continue;
-        ++scored;
-        s.log_score += record.log_score;
-        for (const auto& isomer : record.isomers) {
-            if (isomer.observed_percent <= 1 && isomer.predicted_percent <= 1)
-                continue;
-            ++isomers;
-            s.mean_absolute_error_points += std::abs(isomer.observed_percent - isomer.predicted_percent);
-            s.coverage_90 += isomer.observed_percent >= isomer.low && isomer.observed_percent <= isomer.high;
-            s.mean_width_points += isomer.high - isomer.low;
-        }
+        ++sums.isomers;
+        sums.error += std::abs(isomer.observed_percent - isomer.predicted_percent);
+        sums.covered += isomer.observed_percent >= isomer.low && isomer.observed_percent <= isomer.high;
+        sums.width += isomer.high - isomer.low;
     }
-    if (s.records > 0)
-        s.leading_isomer_right = leading / s.records;
-    if (scored > 0)
-        s.log_score /= scored;
-    if (isomers > 0) {
-        s.mean_absolute_error_points /= isomers;
-        s.coverage_90 /= isomers;
-        s.mean_width_points /= isomers;
+    return sums;
+}
+
+std::array<double, 5> scores_of(const Sums& s) {
+    const double isomers = std::max(s.isomers, 1.0);
+    return {s.error / isomers, s.leading / std::max(s.records, 1.0), s.covered / isomers, s.width / isomers,
+            s.log_score / std::max(s.complete, 1.0)};
+}
+
+}  // namespace
+
+Scores score(std::string_view name, const std::vector<CheckedRecord>& records) {
+    std::map<std::string, Sums> by_compound;
+    Sums all;
+    for (const auto& record : records) {
+        by_compound[record.substrate].add(sums_of(record));
+        all.add(sums_of(record));
     }
-    return s;
+    std::vector<Sums> compounds;
+    for (const auto& [smiles, sums] : by_compound)
+        compounds.push_back(sums);
+    std::array<std::vector<double>, 5> drawn;
+    boost::random::mt19937_64 random(1);
+    for (int r = 0; r < resamples && !compounds.empty(); ++r) {
+        Sums sums;
+        boost::random::uniform_int_distribution<std::size_t> pick(0, compounds.size() - 1);
+        for (std::size_t i = 0; i < compounds.size(); ++i)
+            sums.add(compounds[pick(random)]);
+        const auto figures = scores_of(sums);
+        for (std::size_t f = 0; f < figures.size(); ++f)
+            drawn[f].push_back(figures[f]);
+    }
+    const auto figures = scores_of(all);
+    const auto range = [&](std::size_t f) {
+        auto& values = drawn[f];
+        std::sort(values.begin(), values.end());
+        const auto at = [&](double share) {
+            return values.empty()
+                       ? figures[f]
+                       : values[static_cast<std::size_t>(share * static_cast<double>(values.size() - 1))];
+        };
+        return Score{figures[f], at(0.05), at(0.95)};
+    };
+    return {std::string(name),
+            static_cast<int>(records.size()),
+            static_cast<int>(compounds.size()),
+            range(0),
+            range(1),
+            range(2),
+            range(3),
+            range(4)};
+}
+
+std::vector<CheckSet> check_sets(const Tables& tables, const std::vector<CheckedRecord>& records) {
+    std::vector<CheckSet> sets;
+    const auto put = [&](const std::string& name, const CheckedRecord& record) {
+        const auto found =
+            std::find_if(sets.begin(), sets.end(), [&](const CheckSet& set) { return set.name == name; });
+        if (found == sets.end())
+            sets.push_back({name, {record}});
+        else
+            found->records.push_back(record);
+    };
+    const auto in_series = [&](const CheckedRecord& record, auto&& differ) {
+        return std::any_of(records.begin(), records.end(), [&](const CheckedRecord& other) {
+            return &other != &record && other.substrate == record.substrate && differ(other);
+        });
+    };
+    for (const auto& record : records) {
+        if (record.reaction.find("nitronium") != std::string::npos)
+            continue;
+        const bool whole = record.use == "yes" || record.use == "weak";
+        put(record.family + (!whole ? "-partial" : record.groups == 1 ? "-mono" : "-poly"), record);
+        if (!whole)
+            continue;
+        if (record.groups > 1 && record.use == "yes")
+            put(record.family + "-poly-yes", record);
+        const auto& now = record.conditions;
+        if (in_series(record, [&](const CheckedRecord& other) {
+                return other.reaction == record.reaction &&
+                       other.conditions.temperature_C != now.temperature_C;
+            }))
+            put(record.family + "-temperature", record);
+        if (tables.reactions[static_cast<std::size_t>(now.reaction)].has_acid &&
+            in_series(record, [&](const CheckedRecord& other) {
+                return other.conditions.acid_percent > 0 && other.conditions.acid_percent != now.acid_percent;
+            }))
+            put(record.family + "-acid", record);
+        if (in_series(record, [&](const CheckedRecord& other) {
+                return other.reaction == record.reaction &&
+                       other.conditions.temperature_C == now.temperature_C &&
+                       other.conditions.acid_percent == now.acid_percent;
+            }))
+            put(record.family + "-repeats", record);
+    }
+    std::sort(sets.begin(), sets.end(), [](const CheckSet& a, const CheckSet& b) { return a.name < b.name; });
+    return sets;
+}
+
+double record_error(const CheckedRecord& record) {
+    const auto sums = sums_of(record);
+    return sums.isomers > 0 ? sums.error / sums.isomers : 0;
+}
+
+std::string likely_reason(const Tables& tables, const CheckedRecord& record) {
+    const auto molecule = read_molecule(record.substrate);
+    for (const auto& row : tables.cautions) {
+        const bool holds =
+            std::any_of(row.reactions.begin(), row.reactions.end(), [&](const std::string& word) {
+                return word == "*" || word == record.reaction || word == record.family;
+            });
+        if (row.code.starts_with("additivity-") && holds &&
+            count_matches(*molecule, *read_pattern(row.substrate_smarts, "cautions.csv:" + row.code)) > 0)
+            return row.text;
+    }
+    return {};
 }
 
 }  // namespace isotally

@@ -26,19 +26,26 @@ CheckedRecord record(bool complete, bool leading, double log_score,
 }
 
 TEST(Check, ScoresWorkedByHand) {
-    const std::vector<CheckedRecord> records{
+    std::vector<CheckedRecord> records{
         record(true, true, 1.0, {{"a", 60, 55, 50, 65}, {"b", 38, 44, 39, 48}, {"c", 2, 1, 0.5, 1.5}}),
         record(true, true, 0.5, {{"a", 99.5, 99.3, 98, 100}, {"b", 0.5, 0.7, 0.1, 3}}),
         record(false, false, -7.0, {{"a", 90, 10, 5, 15}})};
+    records[1].substrate = records[2].substrate = "another";
     const auto s = score("by-hand", records);
     EXPECT_EQ(s.name, "by-hand");
     EXPECT_EQ(s.records, 3);
-    EXPECT_DOUBLE_EQ(s.mean_absolute_error_points, (5 + 6 + 1 + 0.2) / 4)
+    EXPECT_DOUBLE_EQ(s.mean_absolute_error_points.value, (5 + 6 + 1 + 0.2) / 4)
         << "isomers above 1 % of complete records";
-    EXPECT_DOUBLE_EQ(s.coverage_90, 2.0 / 4);
-    EXPECT_DOUBLE_EQ(s.mean_width_points, (15 + 9 + 1 + 2) / 4.0);
-    EXPECT_DOUBLE_EQ(s.leading_isomer_right, 2.0 / 3) << "over all records";
-    EXPECT_DOUBLE_EQ(s.log_score, 0.75);
+    EXPECT_DOUBLE_EQ(s.coverage_90.value, 2.0 / 4);
+    EXPECT_DOUBLE_EQ(s.mean_width_points.value, (15 + 9 + 1 + 2) / 4.0);
+    EXPECT_DOUBLE_EQ(s.leading_isomer_right.value, 2.0 / 3) << "over all records";
+    EXPECT_DOUBLE_EQ(s.log_score.value, 0.75);
+    EXPECT_EQ(s.compounds, 2);
+    for (const auto& one :
+         {s.mean_absolute_error_points, s.coverage_90, s.mean_width_points, s.leading_isomer_right}) {
+        EXPECT_LE(one.low, one.value);
+        EXPECT_GE(one.high, one.value);
+    }
 }
 
 TEST(Check, IsomerCountsIfEitherFigureIsAboveOnePercent) {
@@ -47,18 +54,18 @@ TEST(Check, IsomerCountsIfEitherFigureIsAboveOnePercent) {
         {record(
             true, true, 0,
             {{"a", 0.5, 1.5, 0.5, 2}, {"b", 1.5, 0.5, 0.1, 1}, {"c", 1, 1, 0, 2}, {"d", 97, 97, 90, 99}})});
-    EXPECT_DOUBLE_EQ(s.mean_absolute_error_points, 2.0 / 3);
-    EXPECT_DOUBLE_EQ(s.coverage_90, 2.0 / 3);
+    EXPECT_DOUBLE_EQ(s.mean_absolute_error_points.value, 2.0 / 3);
+    EXPECT_DOUBLE_EQ(s.coverage_90.value, 2.0 / 3);
 }
 
 TEST(Check, NothingToScoreIsNotANumber) {
     const auto none = score("none", {});
     EXPECT_EQ(none.records, 0);
-    EXPECT_TRUE(std::isfinite(none.mean_absolute_error_points));
-    EXPECT_TRUE(std::isfinite(none.log_score));
+    EXPECT_TRUE(std::isfinite(none.mean_absolute_error_points.value));
+    EXPECT_TRUE(std::isfinite(none.log_score.value));
     const auto partial = score("partial", {record(false, true, 0, {{"a", 100, 60, 50, 70}})});
-    EXPECT_DOUBLE_EQ(partial.leading_isomer_right, 1);
-    EXPECT_TRUE(std::isfinite(partial.coverage_90));
+    EXPECT_DOUBLE_EQ(partial.leading_isomer_right.value, 1);
+    EXPECT_TRUE(std::isfinite(partial.coverage_90.value));
 }
 
 const CheckedRecord& find(const std::vector<CheckedRecord>& records, const std::string& id) {
@@ -158,10 +165,10 @@ TEST(Check, BetterThanTheFirstTrial) {
     });
     const auto s = score("nitration-poly", checked);
     ASSERT_GE(s.records, 36);
-    EXPECT_LT(s.mean_absolute_error_points, 8.8);
-    EXPECT_GT(s.leading_isomer_right, 29.0 / 36);
-    EXPECT_GT(s.coverage_90, 0.80);
-    EXPECT_LT(s.coverage_90, 0.98);
+    EXPECT_LT(s.mean_absolute_error_points.value, 8.8);
+    EXPECT_GT(s.leading_isomer_right.value, 29.0 / 36);
+    EXPECT_GT(s.coverage_90.value, 0.80);
+    EXPECT_LT(s.coverage_90.value, 0.98);
 }
 
 }  // namespace

@@ -1,6 +1,7 @@
 // How right the predictions are: every compound predicted with its own measurements left out.
 #pragma once
 
+#include <cstdint>
 #include <string>
 #include <string_view>
 #include <vector>
@@ -16,7 +17,8 @@ struct CheckedIsomer {
 };
 
 struct CheckedRecord {
-    std::string id, reaction, substrate, use, source, status;
+    std::string id, reaction, family, substrate, use, source, status;
+    Conditions conditions;
     int groups = 0;         // on the ring before the step
     bool complete = false;  // all isomers are given: counts for the mean error
     bool leading_right = false;
@@ -24,21 +26,39 @@ struct CheckedRecord {
     std::vector<CheckedIsomer> isomers;
 };
 
+/// A score with the range that resampling the compounds gives it, nine times in ten.
+using Score = Range;
+
 /// Scores over records: contract.md names them.
 struct Scores {
     std::string name;
-    int records = 0;
-    double mean_absolute_error_points = 0, leading_isomer_right = 0, coverage_90 = 0, mean_width_points = 0,
-           log_score = 0;
+    int records = 0, compounds = 0;
+    Score mean_absolute_error_points, leading_isomer_right, coverage_90, mean_width_points, log_score;
 };
 
 /// All literature records of a family with use other than no (rows of practice teach but are not scored),
-/// each predicted without any measurement on its compound.
+/// each predicted without any measurement on its compound. The bounds and the shares behind rates stay as the
+/// whole of the tables made them.
 std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family,
                                         const Draws& draws);
 
-/// Errors, coverage and width are over the isomers observed or predicted above 1 % in complete records; the
-/// leading isomer counts over all records.
+/// Errors, coverage and width are over the isomers observed or predicted above 1 % in complete records, the
+/// log score over complete records, the leading isomer over all.
 Scores score(std::string_view name, const std::vector<CheckedRecord>& records);
+
+/// The sets of one family: FAMILY-mono, FAMILY-poly (use yes or weak, one or more groups), FAMILY-poly-yes,
+/// FAMILY-partial (records that count for the leading isomer only) and, where there are any, the records that
+/// form a series: FAMILY-temperature, FAMILY-acid, FAMILY-repeats. Conditions of nitronium salts stay out.
+struct CheckSet {
+    std::string name;
+    std::vector<CheckedRecord> records;
+};
+std::vector<CheckSet> check_sets(const Tables& tables, const std::vector<CheckedRecord>& records);
+
+/// Mean absolute error of one record, in points.
+double record_error(const CheckedRecord& record);
+
+/// Why additivity is known to fail on this compound (rows "additivity-..." of cautions.csv); may be empty.
+std::string likely_reason(const Tables& tables, const CheckedRecord& record);
 
 }  // namespace isotally

@@ -3,6 +3,7 @@
 
 #include <string>
 
+#include "isotally/check.hpp"
 #include "isotally/error.hpp"
 #include "isotally/shares.hpp"
 
@@ -17,6 +18,18 @@ std::string step_csv(const StepAnswer& answer);
 /// For reading, at most 100 columns. `assumed` ends the first line ("defaults").
 std::string step_text(const Tables& tables, const StepAnswer& answer, const Draws& draws,
                       const std::string& assumed);
+
+/// Format isotally.check.1: scores of every set and of all, the worst records, one row an isomer.
+std::string check_json(const Tables& tables, const std::vector<CheckSet>& sets);
+
+/// One line an isomer of every record.
+std::string check_csv(const std::vector<CheckSet>& sets);
+
+/// Scores and the ten worst records, each with a likely reason.
+std::string check_text(const Tables& tables, const std::vector<CheckSet>& sets);
+
+/// Predicted against observed with intervals, and claimed against observed coverage.
+std::string check_svg(const std::vector<CheckSet>& sets);
 
 /// A failure or refusal, format isotally.error.1. `kind` is refused, usage, input, tables, output,
 /// interrupted or defect.

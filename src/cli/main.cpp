@@ -7,6 +7,7 @@
 #include <iostream>
 #include <sstream>
 
+#include "check_command.hpp"
 #include "isotally/built_in.hpp"
 #include "isotally/error.hpp"
 #include "status.hpp"
@@ -43,6 +44,7 @@ const CLI::Validator whole_number(
 
 struct Options {
     cli::StepRequest step;
+    cli::CheckRequest check;
     TablesRequest tables;
     std::string tables_folder;
     bool quiet = false;
@@ -110,6 +112,28 @@ void add_tables(CLI::App& program, Options& options) {
     add_common(*tables, options);
 }
 
+void add_check(CLI::App& program, Options& options) {
+    auto& request = options.check;
+    auto* check =
+        program.add_subcommand("check", "Predictions against literature, each compound left out in turn");
+    check->add_option("set", request.sets, "Families or sets such as nitration-poly; nitration by default")
+        ->type_name("SET");
+    check->add_flag("--all", request.all, "Every family");
+    check->add_option("--draws", request.draws.count, "Draws behind the intervals")
+        ->check(CLI::Range(10, 1000000))
+        ->capture_default_str()
+        ->type_name("N");
+    check->add_option("--seed", request.draws.seed, "Seed of the draws")
+        ->check(whole_number)
+        ->capture_default_str()
+        ->type_name("N");
+    auto* json = check->add_flag("--json", request.json, "One JSON document on standard output");
+    check->add_flag("--csv", request.csv, "One line an isomer as CSV")->excludes(json);
+    check->add_option("--svg", request.svg_file, "Predicted against observed, and calibration, as a picture")
+        ->type_name("FILE");
+    add_common(*check, options);
+}
+
 Knowledge load(const Options& options) {
     if (options.tables_folder.empty())
         return built_in_knowledge();
@@ -148,6 +172,7 @@ int run(int argc, char** argv, std::ostream& out) {
     });
     program.footer(std::string(quoting) + "\n" + standing);
     add_step(program, options);
+    add_check(program, options);
     add_tables(program, options);
     try {
         program.parse(argc, argv);
@@ -162,6 +187,8 @@ int run(int argc, char** argv, std::ostream& out) {
     }
     if (program.got_subcommand("step"))
         return cli::step_command(options.step, load(options), std::cin, out, std::cerr);
+    if (program.got_subcommand("check"))
+        return cli::check_command(options.check, load(options), out);
     options.tables.chemistry_faults = lint_chemistry;
     options.tables.evidence_counts = [](const Tables& tables) { return count_evidence(prepare(tables)); };
     const auto files =
