@@ -75,6 +75,9 @@ CheckedRecord check_record(const Knowledge& knowledge, const FamilyModel& model,
     out.status = record.from.status;
     out.conditions = observation.conditions;
     out.complete = record.complete && record.use != "partial" && record.use != "bound";
+    out.has_ratios =
+        std::any_of(observation.rows.begin(), observation.rows.end(),
+                    [](const ObservedRow& row) { return row.kind == ObservedRow::Kind::figure; });
     out.log_score = log_density(observation, factors);
     const auto& groups = observation.sites.front().groups;
     out.groups = static_cast<int>(6 - std::count(groups.begin(), groups.end(), -1));
@@ -138,8 +141,8 @@ Sums sums_of(const CheckedRecord& record) {
     sums.leading = record.leading_right;
     if (!record.complete)
         return sums;
-    sums.complete = 1;
-    sums.log_score = record.log_score;
+    sums.complete = record.has_ratios;
+    sums.log_score = record.has_ratios ? record.log_score : 0;
     for (const auto& isomer : record.isomers) {
         if (!counts(isomer))
             continue;

@@ -30,7 +30,8 @@ constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-])]-[#6]";
 constexpr const char* nitro_smiles = "*[N+](=O)[O-]";
 /// A sulfo group ortho or para to a hydroxyl or amino group is displaced by nitro, so it counts as one.
 constexpr const char* displaceable_sulfo =
-    "[$([OX2H]),$([NX3;H2,H1;!$(NC=O);!$(NS=O)])]c:[$(c),$(c:c:c)]S(=O)(=O)[OX2H,OX1-]";
+    "[$(c:c-[$([OX2H]),$([NX3;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])]),"
+    "$(c:c:c:c-[$([OX2H]),$([NX3;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])])]-S(=O)(=O)[OX2H,OX1-]";
 constexpr int most_nitro = 2;
 
 }  // namespace
@@ -46,7 +47,8 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
     if (reaction.has_acid)
         chosen.acid_percent = acid_percent.value_or(figure(reaction, "acid_default_percent").value_or(0));
     const auto outside = [&](double value, const char* low, const char* high) {
-        return value < figure(reaction, low).value_or(-1e9) || value > figure(reaction, high).value_or(1e9);
+        return !(value >= figure(reaction, low).value_or(-1e9) &&
+                 value <= figure(reaction, high).value_or(1e9));
     };
     const bool enthalpic = model_figure(tables, reaction.family, "enthalpic").value != 0;
     const char* low = enthalpic ? "temperature_min_C" : "temperature_series_min_C";
@@ -146,10 +148,12 @@ namespace {
 /// 10^3 times slower".
 std::string too_slow(double log10_best, double log10_floor) {
     const auto times = [](double log10_factor) {
-        if (std::abs(log10_factor) < 0.5)
+        const double apart = std::abs(log10_factor);
+        if (apart < 0.5)
             return std::string("about as fast");
-        return fmt::format("about 10^{:.0f} times {}", std::abs(log10_factor),
-                           log10_factor < 0 ? "slower" : "faster");
+        const char* way = log10_factor < 0 ? "slower" : "faster";
+        return apart < 3 ? fmt::format("about {:.0f} times {}", std::pow(10.0, apart), way)
+                         : fmt::format("about 10^{:.1f} times {}", apart, way);
     };
     return fmt::format("its best position is {} {} one of benzene, the limit of this reaction is {}",
                        times(log10_best), std::abs(log10_best) < 0.5 ? "as" : "than", times(log10_floor));

@@ -204,6 +204,7 @@ Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& mo
     answer.ortho_para_ratio = drawn.ortho_para_ratio;
     answer.relative_rate = drawn.relative_rate;
     answer.measured_by = std::move(factors.measured_by);
+    answer.measured_nearby = std::move(factors.measured_nearby);
     const double told = model_figure(tables, reaction.family, "told_percent").value;
     std::vector<Site> notable;  // what is made in traces only needs no caution of its own
     for (std::size_t i = 0; i < found.size(); ++i)

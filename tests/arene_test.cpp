@@ -389,7 +389,7 @@ TEST(AreneMolfile, CutOrLyingFilesNameTheLine) {
     EXPECT_EQ(where(changed(v3000, "COUNTS 8 7", "COUNTS 4000000000 8")), "molfile line 6");
     EXPECT_EQ(where(changed(v3000, "COUNTS 8 7", "COUNTS 30 30")), "molfile line 6");
     EXPECT_EQ(where(changed(v3000, "COUNTS 8 7", "NOTHING")), "molfile line 4");
-    EXPECT_EQ(where(changed(v2000, "  1  2  1  0", "  1 77  1  0")), "molfile");
+    EXPECT_EQ(where(changed(v2000, "  1  2  1  0", "  1 77  1  0")), "molfile line 15");
 }
 
 }  // namespace

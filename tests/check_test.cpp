@@ -5,6 +5,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <map>
 #include <numbers>
 
 #include "knowledge.hpp"
@@ -152,6 +153,66 @@ TEST(Check, LogScoreIsTheNormalDensityOfTheLogRatio) {
     const double expected = -0.5 * (off * off / variance + std::log(2 * std::numbers::pi * variance));
     EXPECT_NEAR(record.log_score, expected, 1e-9);
     EXPECT_EQ(record.leading_right, at.mean[six] < at.mean[four]);
+}
+
+CheckedRecord in_set(const std::string& id, const std::string& reaction, const std::string& use, int groups,
+                     double temperature_C = 25, double acid_percent = 80,
+                     const std::string& substrate = "X") {
+    CheckedRecord out;
+    out.id = id;
+    out.reaction = reaction;
+    out.family = reaction_row(reaction).family;
+    out.use = use;
+    out.groups = groups;
+    out.substrate = substrate;
+    out.conditions = {isotally::reaction(reaction), temperature_C, acid_percent};
+    return out;
+}
+
+TEST(Check, SetsOfAFamily) {
+    const std::vector<CheckedRecord> records{
+        in_set("a", "nitration-mixed-acid", "yes", 1),
+        in_set("again", "nitration-mixed-acid", "yes", 1),
+        in_set("hot", "nitration-mixed-acid", "yes", 1, 45),
+        in_set("strong", "nitration-strong-acid", "yes", 1, 25, 95),
+        in_set("weak", "nitration-mixed-acid", "weak", 2, 25, 80, "Y"),
+        in_set("two", "nitration-nitric-acid", "yes", 2, 25, 0, "Z"),
+        in_set("part", "nitration-mixed-acid", "partial", 2, 25, 80, "U"),
+        in_set("bound", "nitration-mixed-acid", "bound", 1, 25, 80, "V"),
+        in_set("salt", "nitration-nitronium-salt", "yes", 1, 25, 0, "W")};
+    std::map<std::string, std::vector<std::string>> found;
+    for (const auto& set : check_sets(tables(), records))
+        for (const auto& one : set.records)
+            found[set.name].push_back(one.id);
+    const std::map<std::string, std::vector<std::string>> expected{
+        {"nitration-mono", {"a", "again", "hot", "strong"}},
+        {"nitration-poly", {"weak", "two"}},
+        {"nitration-poly-yes", {"two"}},
+        {"nitration-partial", {"part", "bound"}},
+        {"nitration-temperature", {"a", "again", "hot"}},
+        {"nitration-acid", {"a", "again", "hot", "strong"}},
+        {"nitration-repeats", {"a", "again"}}};
+    EXPECT_EQ(found, expected);
+}
+
+TEST(Check, ErrorAndReasonOfOneRecord) {
+    EXPECT_DOUBLE_EQ(record_error(record(
+                         true, true, 0, {{"a", 60, 55, 50, 65}, {"b", 40, 43, 39, 48}, {"c", 0, 0.9, 0, 2}})),
+                     4);
+    EXPECT_DOUBLE_EQ(record_error(record(false, true, 0, {{"a", 60, 55, 50, 65}})), 0)
+        << "not all isomers are known";
+    Tables told = tables();
+    std::erase_if(told.cautions, [](const Caution& row) { return row.code.starts_with("additivity-"); });
+    Caution row;
+    row.code = "additivity-test";
+    row.reactions = {"nitration"};
+    row.substrate_smarts = "c-Cl";
+    row.text = "chlorine's own";
+    told.cautions.push_back(row);
+    EXPECT_EQ(likely_reason(told, in_set("a", "nitration-mixed-acid", "yes", 1, 25, 80, "Clc1ccccc1")),
+              "chlorine's own");
+    EXPECT_EQ(likely_reason(told, in_set("a", "nitration-mixed-acid", "yes", 1, 25, 80, "Cc1ccccc1")), "");
+    EXPECT_EQ(likely_reason(told, in_set("a", "acetylation-lewis-acid", "yes", 1, 25, 0, "Clc1ccccc1")), "");
 }
 
 TEST(Check, BetterThanTheFirstTrial) {

@@ -22,7 +22,8 @@ struct CheckedRecord {
     int groups = 0;         // on the ring before the step
     bool complete = false;  // all isomers are given: counts for the mean error
     bool leading_right = false;
-    double log_score = 0;  // ln of the predictive density of the observed log10-ratios, per ratio
+    bool has_ratios = false;  // at least two isomers were measured
+    double log_score = 0;     // ln of the predictive density of the observed log10-ratios, per ratio
     std::vector<CheckedIsomer> isomers;
 };
 

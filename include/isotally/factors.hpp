@@ -118,8 +118,8 @@ struct SiteFactors {
     std::vector<double> covariance;  // row-major, sites x sites; the compound's own deviation included
     std::vector<std::vector<Contribution>> contributions;
     std::vector<std::vector<Correction>> corrections;
-    std::vector<std::string>
-        measured_by;  // ids of the isomer distributions of this very compound in this family
+    // ids of the isomer distributions of this very compound: in this reaction, and in others of the family
+    std::vector<std::string> measured_by, measured_nearby;
 };
 
 /// How many groups of the tables have each kind of evidence in each family: "nitration, measured" ...

@@ -39,7 +39,8 @@ struct StepAnswer {
     std::vector<IsomerShare> shares;        // by falling percent
     std::optional<Range> ortho_para_ratio;  // all ortho over all para; rings with exactly one group
     Range relative_rate;                    // whole molecule, benzene = 1, no encounter limit
-    std::vector<std::string> measured_by;   // isomer distributions of this compound in this family
+    // isomer distributions of this compound: in this reaction, and in others of the family
+    std::vector<std::string> measured_by, measured_nearby;
     std::vector<ProductCaution> cautions;
     std::vector<std::string> notes;
 };

@@ -4,6 +4,7 @@
 #include <GraphMol/RingInfo.h>
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <set>
 
 namespace isotally::toolkit {
@@ -13,6 +14,18 @@ namespace {
 bool is_usual_element(unsigned atomic_number) {
     static const std::set<unsigned> usual{1, 5, 6, 7, 8, 9, 13, 14, 15, 16, 17, 33, 35, 51, 53};
     return usual.contains(atomic_number);
+}
+
+/// Aromatic rings that share an atom; a saturated ring fused to a benzene is a bridge, not a fused aromatic.
+int aromatic_rings(const RDKit::ROMol& mol, unsigned atom) {
+    int count = 0;
+    for (const auto& ring : mol.getRingInfo()->atomRings()) {
+        const bool here = std::find(ring.begin(), ring.end(), static_cast<int>(atom)) != ring.end();
+        count += here && std::all_of(ring.begin(), ring.end(), [&](int other) {
+                     return mol.getAtomWithIdx(static_cast<unsigned>(other))->getIsAromatic();
+                 });
+    }
+    return count;
 }
 
 std::string polycycle_name(const RDKit::ROMol& mol) {
@@ -66,7 +79,7 @@ std::optional<Refusal> refuse_rings(const RDKit::ROMol& mol) {
         if (!aromatic)
             continue;
         for (const int atom : ring)
-            if (rings.numAtomRings(static_cast<unsigned>(atom)) > 1)
+            if (aromatic_rings(mol, static_cast<unsigned>(atom)) > 1)
                 return Refusal{"molecule",
                                polycycle_name(mol) + ": factors are known for single benzene rings only"};
         if (!carbon || ring.size() != 6)

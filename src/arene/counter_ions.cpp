@@ -2,6 +2,7 @@
 #include <GraphMol/SmilesParse/SmilesWrite.h>
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <map>
 
 #include "toolkit.hpp"
@@ -42,19 +43,37 @@ void neutralise(RDKit::RWMol& mol) {
     RDKit::MolOps::sanitizeMol(mol);
 }
 
+/// As sulfanilic acid is often written: ammonium and acid anion in one molecule.
+bool is_inner_salt(const RDKit::RWMol& mol) {
+    int ammonium = 0, anion = 0;
+    for (const auto* atom : mol.atoms()) {
+        ammonium += atom->getFormalCharge() == 1 && atom->getAtomicNum() == 7 && atom->getTotalNumHs() > 0;
+        anion += atom->getFormalCharge() == -1 && atom->getAtomicNum() == 8 &&
+                 (*mol.atomNeighbors(atom).begin())->getFormalCharge() == 0;
+    }
+    return ammonium > 0 && ammonium == anion;
+}
+
 }  // namespace
 
 Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit::RWMol> mol,
                                                            std::vector<std::string>& notes) {
     const auto parts = RDKit::MolOps::getMolFrags(*mol, false);
-    if (parts.size() == 1)
+    if (parts.size() == 1) {
+        if (is_inner_salt(*mol)) {
+            neutralise(*mol);
+            notes.push_back("an inner salt, taken in its uncharged form");
+        }
         return mol;
+    }
     std::unique_ptr<RDKit::RWMol> kept;
     for (const auto& part : parts) {
         const std::string smiles = RDKit::MolToSmiles(*part);
         const auto ion = counter_ions().find(smiles);
         if (ion != counter_ions().end()) {
-            notes.push_back(fmt::format("{} taken off as a counter-ion", ion->second));
+            const auto note = fmt::format("{} taken off as a counter-ion", ion->second);
+            if (std::find(notes.begin(), notes.end(), note) == notes.end())
+                notes.push_back(note);
         } else if (!kept) {
             kept = std::make_unique<RDKit::RWMol>(*part);
         } else if (RDKit::MolToSmiles(*kept) != smiles) {

@@ -117,7 +117,10 @@ std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::str
                 column->second.rows.emplace_back(at, term.weight);
             }
             own.push_back(row.noise_sd);
-            shared.emplace_back(static_cast<int>(model->observations.size()), observation.shared_sd);
+            // bounds have no noise in common with the figures: each stands for itself, as record -1, -2 ...
+            const bool figure = row.kind == ObservedRow::Kind::figure;
+            shared.emplace_back(figure ? static_cast<int>(model->observations.size()) : -1 - at,
+                                figure ? observation.shared_sd : 0.0);
             model->observation_of_row.push_back(model->observations.size() - 1);
         }
     }
@@ -131,8 +134,11 @@ std::shared_ptr<const FamilyModel> fit_rows(const Knowledge& knowledge, std::str
     for (Eigen::Index i = 0; i < n; ++i) {
         const auto at = static_cast<std::size_t>(i);
         s(i, i) += own[at] * own[at];
-        for (Eigen::Index j = i; j >= 0 && shared[static_cast<std::size_t>(j)].first == shared[at].first; --j)
-            s(i, j) += shared[at].second * shared[at].second;
+        for (Eigen::Index j = i; j >= 0 && model->observation_of_row[static_cast<std::size_t>(j)] ==
+                                               model->observation_of_row[at];
+             --j)
+            if (shared[static_cast<std::size_t>(j)].first == shared[at].first)
+                s(i, j) += shared[at].second * shared[at].second;
     }
     model->factor.compute(s);
     auto fitted = std::make_shared<FamilyModel>();
@@ -315,12 +321,13 @@ SiteFactors site_factors(const FamilyModel& model, const Conditions& conditions,
     SiteFactors out;
     out.mean.assign(at.mean.data(), at.mean.data() + at.mean.size());
     out.covariance.assign(at.covariance.data(), at.covariance.data() + at.covariance.size());
-    for (const auto* observation : fit.observations)
-        if (observation->compound == compound && compound != model.left_out &&
-            observation->kind == Observation::Kind::shares)
-            out.measured_by.push_back(observation->id);
-    if (explain)
-        explain_sites(model, conditions, index, sites, out);
+    for (const auto* observation : fit.observations) {
+        if (observation->compound != compound || compound == model.left_out ||
+            observation->kind != Observation::Kind::shares)
+            continue;
+        const bool here = observation->conditions.reaction == conditions.reaction;
+        (here ? out.measured_by : out.measured_nearby).push_back(observation->id);
+    }
     return out;
 }
 

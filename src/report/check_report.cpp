@@ -10,7 +10,7 @@ namespace isotally {
 namespace {
 
 using Json = nlohmann::ordered_json;
-using report::rounded;
+using report::json_number;
 
 constexpr std::size_t worst_shown = 10;
 
@@ -27,9 +27,10 @@ const std::vector<std::pair<const char*, Score Scores::*>>& score_fields() {
 Json scores_json(const Scores& scores) {
     Json out{{"name", scores.name}, {"records", scores.records}, {"compounds", scores.compounds}};
     for (const auto& [name, field] : score_fields())
-        out[name] = rounded((scores.*field).value);
+        out[name] = json_number((scores.*field).value);
     for (const auto& [name, field] : score_fields())
-        out[std::string(name) + "_range"] = {rounded((scores.*field).low), rounded((scores.*field).high)};
+        out[std::string(name) + "_range"] = {json_number((scores.*field).low),
+                                             json_number((scores.*field).high)};
     return out;
 }
 
@@ -71,11 +72,11 @@ std::string check_json(const Tables& tables, const std::vector<CheckSet>& sets) 
                             {"substrate", record.substrate},
                             {"product", isomer.product},
                             {"observed_percent", record.complete || isomer.observed_percent > 0
-                                                     ? Json(rounded(isomer.observed_percent))
+                                                     ? Json(json_number(isomer.observed_percent))
                                                      : Json(nullptr)},
-                            {"predicted_percent", rounded(isomer.predicted_percent)},
-                            {"low", rounded(isomer.low)},
-                            {"high", rounded(isomer.high)},
+                            {"predicted_percent", json_number(isomer.predicted_percent)},
+                            {"low", json_number(isomer.low)},
+                            {"high", json_number(isomer.high)},
                             {"left_out", true},
                             {"complete", record.complete},
                             {"use", record.use},
@@ -84,7 +85,7 @@ std::string check_json(const Tables& tables, const std::vector<CheckSet>& sets) 
     for (const auto& record : worst_of(records))
         worst.push_back({{"record", record.id},
                          {"substrate", record.substrate},
-                         {"error_points", rounded(record_error(record))},
+                         {"error_points", json_number(record_error(record))},
                          {"reason", reason_text(tables, record)}});
     const Json document{{"format", "isotally.check.1"},
                         {"tables", {{"version", tables.version}, {"digest", tables.digest}}},
@@ -92,7 +93,7 @@ std::string check_json(const Tables& tables, const std::vector<CheckSet>& sets) 
                         {"total", scores_json(score("total", records))},
                         {"worst", worst},
                         {"rows", rows}};
-    return document.dump(2);
+    return report::plain_numbers(document.dump(2));
 }
 
 std::string check_csv(const std::vector<CheckSet>& sets) {

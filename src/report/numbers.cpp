@@ -4,8 +4,7 @@
 
 #include <algorithm>
 #include <array>
-#include <cmath>
-#include <cstdlib>
+#include <string_view>
 
 namespace isotally::report {
 
@@ -15,8 +14,26 @@ std::string number(double value) {
     return fmt::format("{:.12g}", value);
 }
 
-double rounded(double value) {
-    return std::isfinite(value) ? std::strtod(number(value).c_str(), nullptr) : value;
+namespace {
+
+constexpr char mark = '\x01';
+constexpr std::string_view open_mark = "\"\\u0001", close_mark = "\\u0001\"";
+
+}  // namespace
+
+std::string json_number(double value) {
+    return mark + number(value) + mark;
+}
+
+std::string plain_numbers(std::string dumped) {
+    std::string out;
+    std::size_t from = 0;
+    for (auto at = dumped.find(open_mark); at != std::string::npos; at = dumped.find(open_mark, from)) {
+        const auto begin = at + open_mark.size(), end = dumped.find(close_mark, begin);
+        out.append(dumped, from, at - from).append(dumped, begin, end - begin);
+        from = end + close_mark.size();
+    }
+    return out.append(dumped, from);
 }
 
 std::string locants_text(const IsomerShare& share, bool several_rings) {

@@ -8,9 +8,13 @@
 
 namespace isotally::report {
 
-/// Rounded to 12 significant digits, as JSON and CSV print numbers.
-double rounded(double value);
+/// A number with 12 significant digits, as JSON and CSV print it.
 std::string number(double value);
+
+/// The same inside a JSON document: a marked text that plain_numbers turns into a bare number after the dump
+/// (the JSON library itself may print up to 17 digits).
+std::string json_number(double value);
+std::string plain_numbers(std::string dumped);
 
 /// "2,6"; with several rings "ring 2: 2,6".
 std::string locants_text(const IsomerShare& share, bool several_rings);

@@ -7,7 +7,7 @@ namespace isotally {
 namespace {
 
 using Json = nlohmann::ordered_json;
-using report::rounded;
+using report::json_number;
 
 Json or_null(const std::optional<std::string>& text) {
     return text ? Json(*text) : Json(nullptr);
@@ -19,13 +19,14 @@ Json site_json(const Tables& tables, const IsomerShare& share) {
         contributions.push_back(
             {{"substituent", tables.substituents[static_cast<std::size_t>(one.substituent)].name},
              {"relation", relation_names[one.relation]},
-             {"log10_factor", rounded(one.log10_factor)},
-             {"sd", rounded(one.sd)},
+             {"log10_factor", json_number(one.log10_factor)},
+             {"sd", json_number(one.sd)},
              {"evidence", one.evidence},
              {"sources", one.sources}});
     for (const auto& one : share.corrections)
-        corrections.push_back(
-            {{"name", one.name}, {"log10_factor", rounded(one.log10_factor)}, {"sd", rounded(one.sd)}});
+        corrections.push_back({{"name", one.name},
+                               {"log10_factor", json_number(one.log10_factor)},
+                               {"sd", json_number(one.sd)}});
     return {{"ring", share.site.ring + 1},
             {"locants", share.locants},
             {"multiplicity", share.site.multiplicity},
@@ -33,11 +34,11 @@ Json site_json(const Tables& tables, const IsomerShare& share) {
              {{"smiles", share.site.product},
               {"name", or_null(share.product_name)},
               {"systematic_name", or_null(share.product_systematic_name)}}},
-            {"percent", rounded(share.percent.value)},
-            {"percent_low", rounded(share.percent.low)},
-            {"percent_high", rounded(share.percent.high)},
-            {"log10_factor", rounded(share.log10_factor)},
-            {"log10_factor_sd", rounded(share.log10_factor_sd)},
+            {"percent", json_number(share.percent.value)},
+            {"percent_low", json_number(share.percent.low)},
+            {"percent_high", json_number(share.percent.high)},
+            {"log10_factor", json_number(share.log10_factor)},
+            {"log10_factor_sd", json_number(share.log10_factor_sd)},
             {"evidence", report::weakest_evidence(share)},
             {"contributions", contributions},
             {"corrections", corrections}};
@@ -58,36 +59,38 @@ std::string step_json(const Tables& tables, const StepAnswer& answer, const Draw
     }
     Json ratio = nullptr;
     if (answer.ortho_para_ratio)
-        ratio = {{"value", rounded(answer.ortho_para_ratio->value)},
-                 {"low", rounded(answer.ortho_para_ratio->low)},
-                 {"high", rounded(answer.ortho_para_ratio->high)}};
-    const Json document{{"format", "isotally.step.1"},
-                        {"tables", {{"version", tables.version}, {"digest", tables.digest}}},
-                        {"substrate",
-                         {{"smiles", answer.smiles},
-                          {"name", or_null(answer.name)},
-                          {"systematic_name", or_null(answer.systematic_name)}}},
-                        {"reaction",
-                         {{"id", reaction.id},
-                          {"name", reaction.name},
-                          {"conditions", reaction.conditions},
-                          {"temperature_C", rounded(answer.conditions.temperature_C)},
-                          {"acid_percent", reaction.has_acid ? Json(rounded(answer.conditions.acid_percent))
-                                                             : Json(nullptr)}}},
-                        {"level", rounded(draws.level)},
-                        {"draws", draws.count},
-                        {"seed", draws.seed},
-                        {"sites", sites},
-                        {"ortho_para_ratio", ratio},
-                        {"relative_rate",
-                         {{"value", rounded(answer.relative_rate.value)},
-                          {"low", rounded(answer.relative_rate.low)},
-                          {"high", rounded(answer.relative_rate.high)},
-                          {"reference", "benzene"}}},
-                        {"measured_by", answer.measured_by},
-                        {"cautions", cautions},
-                        {"notes", answer.notes}};
-    return document.dump(indent);
+        ratio = {{"value", json_number(answer.ortho_para_ratio->value)},
+                 {"low", json_number(answer.ortho_para_ratio->low)},
+                 {"high", json_number(answer.ortho_para_ratio->high)}};
+    const Json document{
+        {"format", "isotally.step.1"},
+        {"tables", {{"version", tables.version}, {"digest", tables.digest}}},
+        {"substrate",
+         {{"smiles", answer.smiles},
+          {"name", or_null(answer.name)},
+          {"systematic_name", or_null(answer.systematic_name)}}},
+        {"reaction",
+         {{"id", reaction.id},
+          {"name", reaction.name},
+          {"conditions", reaction.conditions},
+          {"temperature_C", json_number(answer.conditions.temperature_C)},
+          {"acid_percent",
+           reaction.has_acid ? Json(json_number(answer.conditions.acid_percent)) : Json(nullptr)}}},
+        {"level", json_number(draws.level)},
+        {"draws", draws.count},
+        {"seed", draws.seed},
+        {"sites", sites},
+        {"ortho_para_ratio", ratio},
+        {"relative_rate",
+         {{"value", json_number(answer.relative_rate.value)},
+          {"low", json_number(answer.relative_rate.low)},
+          {"high", json_number(answer.relative_rate.high)},
+          {"reference", "benzene"}}},
+        {"measured_by", answer.measured_by},
+        {"measured_nearby", answer.measured_nearby},
+        {"cautions", cautions},
+        {"notes", answer.notes}};
+    return report::plain_numbers(document.dump(indent));
 }
 
 std::string error_json(int exit_status, const std::string& kind, const std::string& where,

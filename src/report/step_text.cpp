@@ -42,46 +42,78 @@ std::string product_text(const IsomerShare& share) {
     return share.product_name.value_or(share.product_systematic_name.value_or(share.site.product));
 }
 
+/// The table of isomers; a long name goes on below its own row.
+std::string isomer_table(const StepAnswer& answer, double level) {
+    const bool rings = several_rings(answer);
+    std::size_t place = 8, longest = 7;
+    for (const auto& share : answer.shares) {
+        place = std::max(place, report::locants_text(share, rings).size());
+        longest = std::max(longest, product_text(share).size());
+    }
+    constexpr std::size_t rest = 62;  // shares, interval, bar, evidence and the blanks between
+    const auto product = std::min(longest, columns - rest - place);
+    const auto row = [&](const std::string& at, const std::string& name, const std::string& share,
+                         const std::string& interval, const std::string& bar, const std::string& evidence) {
+        return fmt::format("  {:<{}}  {:<{}}  {:>7}  {:>15}  {:<20}  {}\n", at, place, name, product, share,
+                           interval, bar, evidence);
+    };
+    auto out =
+        row("position", "product", "share %", fmt::format("{:g} % interval", 100 * level), "", "evidence");
+    for (const auto& share : answer.shares) {
+        const auto name = product_text(share);
+        const auto bar = static_cast<std::size_t>(share.percent.value / 5 + 0.5);
+        out += row(report::locants_text(share, rings), name.substr(0, product),
+                   percent_text(share.percent.value),
+                   percent_text(share.percent.low) + " to " + percent_text(share.percent.high),
+                   std::string(bar, '='), report::weakest_evidence(share));
+        for (std::size_t from = product; from < name.size(); from += product)
+            out += std::string(place + 4, ' ') + name.substr(from, product) + "\n";
+    }
+    return out;
+}
+
+/// A ratio of two traces tells nothing.
+bool tells_ratio(const StepAnswer& answer) {
+    return std::any_of(answer.shares.begin(), answer.shares.end(), [](const IsomerShare& share) {
+        const auto relation = share.contributions.empty() ? meta : share.contributions.front().relation;
+        return relation != meta && share.percent.value >= 1;
+    });
+}
+
+std::string some_of(const std::vector<std::string>& ids) {
+    constexpr std::size_t shown = 8;
+    std::string text;
+    for (std::size_t i = 0; i < std::min(shown, ids.size()); ++i)
+        text += (i ? ", " : "") + ids[i];
+    return text + (ids.size() > shown ? fmt::format(" and {} more", ids.size() - shown) : "");
+}
+
 }  // namespace
 
 std::string step_text(const Tables& tables, const StepAnswer& answer, const Draws& draws,
                       const std::string& assumed) {
     const auto& reaction = tables.reactions[static_cast<std::size_t>(answer.conditions.reaction)];
-    std::string out = answer.name.value_or(answer.systematic_name.value_or(answer.smiles));
-    out += fmt::format(", {}, {:g} C", reaction.name, answer.conditions.temperature_C);
+    std::string first = answer.name.value_or(answer.systematic_name.value_or(answer.smiles));
+    if (answer.name && answer.systematic_name && answer.name != answer.systematic_name)
+        first += fmt::format(" (numbered as {})", *answer.systematic_name);
+    first += fmt::format(", {}, {:g} C", reaction.name, answer.conditions.temperature_C);
     if (reaction.has_acid)
-        out += fmt::format(", {:g} % sulfuric acid", answer.conditions.acid_percent);
-    out += ": " + assumed + "\n\n";
-
-    const bool rings = several_rings(answer);
-    std::size_t place = 8, product = 7;
-    for (const auto& share : answer.shares) {
-        place = std::max(place, report::locants_text(share, rings).size());
-        product = std::max(product, product_text(share).size());
-    }
-    product = std::min<std::size_t>(product, 44);
-    out += fmt::format("  {:<{}}  {:<{}}  {:>7}  {:>15}  {:<20}  {}\n", "position", place, "product", product,
-                       "share %", fmt::format("{:g} % interval", 100 * draws.level), "", "evidence");
-    for (const auto& share : answer.shares) {
-        const auto bar = static_cast<std::size_t>(share.percent.value / 5 + 0.5);
-        out +=
-            fmt::format("  {:<{}}  {:<{}}  {:>7}  {:>15}  {:<20}  {}\n", report::locants_text(share, rings),
-                        place, product_text(share), product, percent_text(share.percent.value),
-                        percent_text(share.percent.low) + " to " + percent_text(share.percent.high),
-                        std::string(bar, '='), report::weakest_evidence(share));
-    }
+        first += fmt::format(", {:g} % sulfuric acid", answer.conditions.acid_percent);
+    std::string out;
+    add_paragraph(out, "", first + ": " + assumed);
+    out += "\n" + isomer_table(answer, draws.level);
     out += "\n";
-    if (answer.ortho_para_ratio)
+    if (answer.ortho_para_ratio && tells_ratio(answer))
         out += fmt::format("  ortho:para ratio  {} ({} to {})\n", plain(answer.ortho_para_ratio->value),
                            plain(answer.ortho_para_ratio->low), plain(answer.ortho_para_ratio->high));
     out += fmt::format("  relative rate     {} ({} to {}), benzene = 1\n", plain(answer.relative_rate.value),
                        plain(answer.relative_rate.low), plain(answer.relative_rate.high));
-    if (!answer.measured_by.empty()) {
-        std::string records;
-        for (const auto& id : answer.measured_by)
-            records += (records.empty() ? "" : ", ") + id;
-        add_paragraph(out, "  measured          ", "this compound itself, records " + records);
-    }
+    if (!answer.measured_by.empty())
+        add_paragraph(out, "  measured          ",
+                      "this compound in this reaction: " + some_of(answer.measured_by));
+    if (!answer.measured_nearby.empty())
+        add_paragraph(out, "  measured nearby   ",
+                      "this compound, other conditions: " + some_of(answer.measured_nearby));
     out += "\n";
     if (answer.shares.size() == 1)
         add_paragraph(out, "  note: ", "only one isomer is possible");
