@@ -328,6 +328,8 @@ SiteFactors site_factors(const FamilyModel& model, const Conditions& conditions,
         const bool here = observation->conditions.reaction == conditions.reaction;
         (here ? out.measured_by : out.measured_nearby).push_back(observation->id);
     }
+    if (explain)
+        explain_sites(model, conditions, index, sites, out);
     return out;
 }
 
