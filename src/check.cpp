@@ -98,19 +98,24 @@ CheckedRecord check_record(const Knowledge& knowledge, const FamilyModel& model,
 
 std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family,
                                         const Draws& draws) {
-    const auto full = fit_family(knowledge, family);
+    return check_family(knowledge, knowledge, family, draws);
+}
+
+std::vector<CheckedRecord> check_family(const Knowledge& taught, const Knowledge& scored,
+                                        std::string_view family, const Draws& draws) {
+    const auto full = fit_family(taught, family);
     std::map<std::string, std::shared_ptr<const FamilyModel>> without;
     std::vector<CheckedRecord> checked;
-    for (const auto& observation : knowledge.observations) {
+    for (const auto& observation : scored.observations) {
         const auto& reaction =
-            knowledge.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)];
+            scored.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)];
         if (reaction.family != family || observation.kind != Observation::Kind::shares ||
             observation.status == "practice" || observation.sites.size() < 2)
             continue;
         auto& model = without[observation.compound];
         if (!model)
             model = leave_out(*full, observation.compound);
-        checked.push_back(check_record(knowledge, *model, family, observation, draws));
+        checked.push_back(check_record(scored, *model, family, observation, draws));
     }
     return checked;
 }

@@ -30,8 +30,8 @@ constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-])]-[#6]";
 constexpr const char* nitro_smiles = "*[N+](=O)[O-]";
 /// A sulfo group ortho or para to a hydroxyl or amino group is displaced by nitro, so it counts as one.
 constexpr const char* displaceable_sulfo =
-    "[$(c:c-[$([OX2H]),$([NX3;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])]),"
-    "$(c:c:c:c-[$([OX2H]),$([NX3;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])])]-S(=O)(=O)[OX2H,OX1-]";
+    "[$(c:c-[$([OX2H]),$([NX3;+0;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])]),"
+    "$(c:c:c:c-[$([OX2H]),$([NX3;+0;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])])]-S(=O)(=O)[OX2H,OX1-]";
 constexpr int most_nitro = 2;
 
 }  // namespace

@@ -19,7 +19,7 @@ using testing::ElementsAre;
 CheckedRecord record(bool complete, bool leading, double log_score,
                      const std::vector<CheckedIsomer>& isomers) {
     CheckedRecord out;
-    out.complete = complete;
+    out.complete = out.has_ratios = complete;
     out.leading_right = leading;
     out.log_score = log_score;
     out.isomers = isomers;

@@ -255,7 +255,7 @@ TEST(FactorsTextbook, EvidenceOfEachFigure) {
     EXPECT_EQ(of(*leave_out(*fitted, "Cc1ccccc1Cl"), "Clc1ccccc1", ortho).evidence, "correlated");
     EXPECT_EQ(of(*fitted, "CCc1ccccc1", para).evidence, "assumed") << "no constants of its own";
     EXPECT_THAT(of(*fitted, "CCc1ccccc1", para).sources, ElementsAre("constants"));
-    EXPECT_THAT(small_factors(known, *fitted, "Cc1ccccc1", "two").measured_by, ElementsAre("toluene"));
+    EXPECT_THAT(small_factors(known, *fitted, "Cc1ccccc1", "two").measured_nearby, ElementsAre("toluene"));
 }
 
 TEST(FactorsTextbook, BoundCutsOffWhatLiesAboveIt) {

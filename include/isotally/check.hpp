@@ -43,6 +43,11 @@ struct Scores {
 std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family,
                                         const Draws& draws);
 
+/// The same with one knowledge to learn from and another whose records are scored (for trying what a part of
+/// the model brings).
+std::vector<CheckedRecord> check_family(const Knowledge& taught, const Knowledge& scored,
+                                        std::string_view family, const Draws& draws);
+
 /// Errors, coverage and width are over the isomers observed or predicted above 1 % in complete records, the
 /// log score over complete records, the leading isomer over all.
 Scores score(std::string_view name, const std::vector<CheckedRecord>& records);

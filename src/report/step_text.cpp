@@ -50,7 +50,7 @@ std::string isomer_table(const StepAnswer& answer, double level) {
         place = std::max(place, report::locants_text(share, rings).size());
         longest = std::max(longest, product_text(share).size());
     }
-    constexpr std::size_t rest = 62;  // shares, interval, bar, evidence and the blanks between
+    constexpr std::size_t rest = 64;  // shares, interval, bar, evidence and the blanks between
     const auto product = std::min(longest, columns - rest - place);
     const auto row = [&](const std::string& at, const std::string& name, const std::string& share,
                          const std::string& interval, const std::string& bar, const std::string& evidence) {

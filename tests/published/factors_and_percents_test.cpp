@@ -198,7 +198,9 @@ TEST(PublishedFactors, GiveThePercentagesOfTheSamePaper) {
 
 TEST(PublishedFactors, GiveTheRelativeRateOfTheSamePaper) {
     for (const auto& paper : papers()) {
-        const SiteFactors factors{log10_of(paper.factor), std::vector<double>(9, 0), {}, {}, {}};
+        SiteFactors factors;
+        factors.mean = log10_of(paper.factor);
+        factors.covariance.assign(9, 0);
         const auto& family = reaction_row(paper.reaction).family;
         const auto drawn = draw_shares(tables(), family, positions_of(paper), factors, {.count = 10});
         EXPECT_NEAR(drawn.relative_rate.value / paper.relative_rate, 1, rounding) << label(paper);
