@@ -232,5 +232,20 @@ TEST(Check, BetterThanTheFirstTrial) {
     EXPECT_LT(s.coverage_90.value, 0.98);
 }
 
+TEST(Check, AWrongMeasurementLowersTheScore) {
+    // toluene's distribution turned upside down misleads every alkylbenzene that has to be predicted from it
+    auto tables = parse_tables(read_table_folder(ISOTALLY_SOURCE_DIR "/tables"));
+    for (auto& record : tables.measurements)
+        if (record.substrate == "Cc1ccccc1" && record.products.size() == 3)
+            std::swap(record.products.front().percent, record.products[1].percent);
+    const auto misled = prepare(std::move(tables));
+    const auto log_score = [](const std::vector<CheckedRecord>& records) {
+        return score("nitration", records).log_score.value;
+    };
+    const auto right = check_family(knowledge(), "nitration", {.count = 50});
+    const auto wrong = check_family(misled, knowledge(), "nitration", {.count = 50});
+    EXPECT_LT(log_score(wrong), log_score(right) - 0.1);
+}
+
 }  // namespace
 }  // namespace isotally
