@@ -76,7 +76,11 @@ Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit
                 notes.push_back(note);
         } else if (!kept) {
             kept = std::make_unique<RDKit::RWMol>(*part);
-        } else if (RDKit::MolToSmiles(*kept) != smiles) {
+        } else if (RDKit::MolToSmiles(*kept) == smiles) {
+            const std::string note = "the same molecule stands there more than once: taken once";
+            if (std::find(notes.begin(), notes.end(), note) == notes.end())
+                notes.push_back(note);
+        } else {
             return Refusal{"molecule",
                            fmt::format("a mixture ({} with {}): only one substance is taken, and the "
                                        "counter-ions Na, K, Cl and HSO4 are taken off",

@@ -1,7 +1,7 @@
-"""Start-up: one `isotally step` as a whole process against a bare program on the same toolkit.
+"""Whole processes: one `isotally step` against a bare program on the same toolkit, and `isotally check` against steps.
 
 start_up.py ISOTALLY BARE_TOOLKIT [ROUNDS]
-Both are started in turn in one run; the medians, their ratio and the largest memory are printed.
+All are started in turn in one run; the medians, their ratio and the largest memory are printed.
 """
 
 import os
@@ -30,6 +30,8 @@ def main():
     commands = {
         "bare toolkit": [bare, SMILES],
         "isotally step": [program, "step", SMILES, "--reaction", "nitration-mixed-acid"],
+        "isotally check": [program, "check"],
+        "check --all": [program, "check", "--all"],
     }
     measured = {name: [] for name in commands}
     for turn in range(rounds + 3):
@@ -43,7 +45,9 @@ def main():
         medians[name] = statistics.median(times)
         print(f"{name:14} median {medians[name]:6.2f} ms   fastest {times[0]:6.2f} ms   "
               f"memory {max(memory for _, memory in results):5.1f} MB")
-    print(f"ratio of the medians {medians['isotally step'] / medians['bare toolkit']:.2f} over {rounds} rounds")
+    print(f"ratios of the medians over {rounds} rounds: a step is {medians['isotally step'] / medians['bare toolkit']:.2f} bare "
+          f"programs, check {medians['isotally check'] / medians['isotally step']:.1f} steps, "
+          f"check --all {medians['check --all'] / medians['isotally step']:.1f} steps")
 
 
 main()
