@@ -115,6 +115,8 @@ bool bridged(const ROMol& mol, const std::vector<int>& ring) {
 
 Answer<Arene> from_toolkit(const Tables& tables, const GroupIndex& index, std::unique_ptr<RWMol> raw) {
     Arene arene;
+    for (auto* atom : raw->atoms())
+        atom->setAtomMapNum(0);  // numbers of a reaction drawing say nothing about the molecule
     if (const auto refused = toolkit::refuse_atoms(*raw)) {
         // a metal counter-ion is taken off first; anything else is final
         if (RDKit::MolOps::getMolFrags(*raw, false).size() == 1)

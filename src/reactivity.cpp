@@ -26,7 +26,8 @@ bool applies(const std::vector<std::string>& reactions, const Reaction& reaction
     });
 }
 
-constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-])]-[#6]";
+/// Nitroso counts: nitric acid makes nitro of it.
+constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-]),$([NX2]=O)]-[#6]";
 constexpr const char* nitro_smiles = "*[N+](=O)[O-]";
 /// A sulfo group ortho or para to a hydroxyl or amino group is displaced by nitro, so it counts as one.
 constexpr const char* displaceable_sulfo =

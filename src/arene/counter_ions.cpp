@@ -29,7 +29,7 @@ void neutralise(RDKit::RWMol& mol) {
             charged_neighbour |= other->getFormalCharge() != 0;
         if (charged_neighbour)
             continue;
-        if (atom->getFormalCharge() == -1) {
+        if (atom->getFormalCharge() == -1 && atom->getAtomicNum() == 8) {
             atom->setFormalCharge(0);
             if (atom->getNoImplicit())
                 atom->setNumExplicitHs(atom->getNumExplicitHs() + 1);
@@ -48,7 +48,7 @@ bool is_inner_salt(const RDKit::RWMol& mol) {
     int ammonium = 0, anion = 0;
     for (const auto* atom : mol.atoms()) {
         ammonium += atom->getFormalCharge() == 1 && atom->getAtomicNum() == 7 && atom->getTotalNumHs() > 0;
-        anion += atom->getFormalCharge() == -1 && atom->getAtomicNum() == 8 &&
+        anion += atom->getFormalCharge() == -1 && atom->getAtomicNum() == 8 && atom->getDegree() == 1 &&
                  (*mol.atomNeighbors(atom).begin())->getFormalCharge() == 0;
     }
     return ammonium > 0 && ammonium == anion;

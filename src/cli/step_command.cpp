@@ -90,6 +90,8 @@ std::string answer_line(const StepRequest& request, const Knowledge& knowledge, 
         return step_json(knowledge.tables, std::get<StepAnswer>(step), request.draws, -1);
     } catch (const Error& e) {
         return failed(static_cast<int>(status_of(e.kind)), kind_name(e.kind), e.where, e.what());
+    } catch (const std::exception& e) {
+        return failed(static_cast<int>(Status::defect), "defect", "isotally", e.what());
     }
 }
 
@@ -130,6 +132,8 @@ int step_command(const StepRequest& request, const Knowledge& knowledge, std::is
     const auto arene = read_molecule(knowledge, request.molecule);
     if (const auto* refused = refusal(arene))
         return refuse(*refused, request.json, out, err);
+    if (const auto declined = decline_molecule(tables, std::get<Arene>(arene).smiles))
+        return refuse(*declined, request.json, out, err);
     if (reaction < 0)
         return list_reactions(request, knowledge, std::get<Arene>(arene), out, err);
     Models models;

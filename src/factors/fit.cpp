@@ -192,6 +192,8 @@ struct Posterior {
 };
 
 Posterior posterior(const FamilyModel& model, const std::vector<Form>& forms) {
+    if (forms.empty())
+        return {};
     const auto& fit = *model.fit;
     const auto q = static_cast<Eigen::Index>(forms.size());
     const auto n = model.weights.size();
