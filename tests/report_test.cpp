@@ -150,13 +150,13 @@ TEST(ReportJson, NullsStandWhereNothingCanBeSaid) {
     EXPECT_TRUE(xylene["reaction"]["acid_percent"].is_null());
     const json cation = json_of("C[N+](C)(C)c1ccccc1", "nitration-strong-acid");
     EXPECT_TRUE(cation["sites"][0]["product"]["systematic_name"].is_null());
-    for (const json& site : json_of("Cc1ccc(-c2ccccc2)cc1", "bromination-lewis-acid")["sites"])
+    for (const json& site : json(json_of("Cc1ccc(-c2ccccc2)cc1", "bromination-lewis-acid")["sites"]))
         EXPECT_THAT(site["ring"].get<int>(), testing::AnyOf(1, 2));
 }
 
 TEST(ReportJson, CorrectionsAndContributionsAddUpAsPrinted) {
     for (const auto& [molecule, id] : several)
-        for (const json& site : json_of(molecule, id)["sites"]) {
+        for (const json& site : json(json_of(molecule, id)["sites"])) {
             double sum = 0;
             for (const json& one : site["contributions"])
                 sum += one["log10_factor"].get<double>();
