@@ -23,7 +23,7 @@ std::string lower_case(std::string text) {
 
 Answer<Arene> from_molfile(const Knowledge& knowledge, const std::string& path) {
     std::ifstream file(path, std::ios::binary);
-    if (!file || std::filesystem::is_directory(path))
+    if (!file || !std::filesystem::is_regular_file(path))
         throw Error(ErrorKind::input, path, "the molfile can't be opened");
     std::string text((std::istreambuf_iterator<char>(file)), {});
     if (file.bad() || (text.empty() && !file.eof()))
