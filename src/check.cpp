@@ -9,6 +9,8 @@
 #include <cmath>
 #include <map>
 #include <numbers>
+#include <tuple>
+#include <utility>
 
 namespace isotally {
 namespace {
@@ -50,6 +52,28 @@ double log_density(const Observation& observation, const SiteFactors& factors) {
     return -0.5 * (apart.dot(factor.solve(apart)) + logdet + size * std::log(2 * std::numbers::pi)) / size;
 }
 
+/// ln of the predicted probability that a limit of a record holds, mean over its limits.
+std::pair<int, double> limits_hold(const Observation& observation, const SiteFactors& factors) {
+    const auto n = factors.mean.size();
+    int limits = 0;
+    double sum = 0;
+    for (const auto& row : observation.rows) {
+        if (row.kind != ObservedRow::Kind::at_most)
+            continue;
+        double mean = 0, variance = row.softness * row.softness;
+        for (const auto& [i, wi] : row.weights) {
+            mean += wi * factors.mean[static_cast<std::size_t>(i)];
+            for (const auto& [j, wj] : row.weights)
+                variance += wi * wj *
+                            factors.covariance[static_cast<std::size_t>(i) * n + static_cast<std::size_t>(j)];
+        }
+        const double z = (row.limit - mean) / std::sqrt(variance);
+        sum += std::log(0.5 * std::erfc(-z / std::numbers::sqrt2));
+        ++limits;
+    }
+    return {limits, limits > 0 ? sum / limits : 0};
+}
+
 std::size_t largest(const std::vector<double>& values) {
     return static_cast<std::size_t>(std::max_element(values.begin(), values.end()) - values.begin());
 }
@@ -79,6 +103,7 @@ CheckedRecord check_record(const Knowledge& knowledge, const FamilyModel& model,
         std::any_of(observation.rows.begin(), observation.rows.end(),
                     [](const ObservedRow& row) { return row.kind == ObservedRow::Kind::figure; });
     out.log_score = log_density(observation, factors);
+    std::tie(out.limits, out.limits_log_probability) = limits_hold(observation, factors);
     const auto& groups = observation.sites.front().groups;
     out.groups = static_cast<int>(6 - std::count(groups.begin(), groups.end(), -1));
     std::vector<double> observed(found.size(), 0), predicted(found.size(), 0);
@@ -97,12 +122,12 @@ CheckedRecord check_record(const Knowledge& knowledge, const FamilyModel& model,
 }  // namespace
 
 std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family,
-                                        const Draws& draws) {
-    return check_family(knowledge, knowledge, family, draws);
+                                        const Draws& draws, LeftOut left_out) {
+    return check_family(knowledge, knowledge, family, draws, left_out);
 }
 
 std::vector<CheckedRecord> check_family(const Knowledge& taught, const Knowledge& scored,
-                                        std::string_view family, const Draws& draws) {
+                                        std::string_view family, const Draws& draws, LeftOut left_out) {
     const auto full = fit_family(taught, family);
     std::map<std::string, std::shared_ptr<const FamilyModel>> without;
     std::vector<CheckedRecord> checked;
@@ -112,10 +137,36 @@ std::vector<CheckedRecord> check_family(const Knowledge& taught, const Knowledge
         if (reaction.family != family || observation.kind != Observation::Kind::shares ||
             observation.status == "practice" || observation.sites.size() < 2)
             continue;
-        auto& model = without[observation.compound];
+        auto& model = without[left_out == LeftOut::compound ? observation.compound : observation.id];
         if (!model)
-            model = leave_out(*full, observation.compound);
+            model = leave_out(*full, [&](const Observation& other) {
+                return left_out == LeftOut::compound ? other.compound == observation.compound
+                                                     : other.id == observation.id;
+            });
         checked.push_back(check_record(scored, *model, family, observation, draws));
+    }
+    return checked;
+}
+
+std::vector<CheckedRate> check_rates(const Knowledge& taught, const Knowledge& scored,
+                                     std::string_view family) {
+    const auto full = fit_family(taught, family);
+    std::vector<CheckedRate> checked;
+    for (const auto& observation : scored.observations) {
+        const auto& reaction =
+            scored.tables.reactions[static_cast<std::size_t>(observation.conditions.reaction)];
+        const auto& groups = observation.sites.front().groups;
+        const auto carried = 6 - std::count(groups.begin(), groups.end(), -1);
+        if (reaction.family != family || observation.kind != Observation::Kind::rate || carried < 2)
+            continue;
+        const auto model = leave_out(*full, observation.compound);
+        const auto factors =
+            site_factors(*model, observation.conditions, observation.compound, observation.sites, false);
+        double predicted = 0;
+        for (const auto& [site, weight] : observation.rows.front().weights)
+            predicted += weight * factors.mean[static_cast<std::size_t>(site)];
+        checked.push_back({observation.id, observation.compound, observation.rows.front().value, predicted,
+                           log_density(observation, factors)});
     }
     return checked;
 }

@@ -92,7 +92,7 @@ void serialize(Archive& ar, PlacedSite& x) {
 }
 template <class Archive>
 void serialize(Archive& ar, ObservedRow& x) {
-    ar(x.weights, x.value, x.noise_sd, x.kind);
+    ar(x.weights, x.value, x.noise_sd, x.kind, x.limit, x.softness);
 }
 template <class Archive>
 void serialize(Archive& ar, Observation& x) {

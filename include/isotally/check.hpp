@@ -24,6 +24,8 @@ struct CheckedRecord {
     bool leading_right = false;
     bool has_ratios = false;  // at least two isomers were measured
     double log_score = 0;     // ln of the predictive density of the observed log10-ratios, per ratio
+    int limits = 0;           // isomers known only as "not more than"
+    double limits_log_probability = 0;  // ln of the predicted probability that a limit holds, per limit
     std::vector<CheckedIsomer> isomers;
 };
 
@@ -37,16 +39,30 @@ struct Scores {
     Score mean_absolute_error_points, leading_isomer_right, coverage_90, mean_width_points, log_score;
 };
 
+/// What is left out to predict a record: all on its compound, or the record alone (its compound in other
+/// conditions stays, so that what conditions do is put to the test).
+enum class LeftOut { compound, record };
+
 /// All literature records of a family with use other than no (rows of practice teach but are not scored),
 /// each predicted without any measurement on its compound. The bounds and the shares behind rates stay as the
 /// whole of the tables made them.
 std::vector<CheckedRecord> check_family(const Knowledge& knowledge, std::string_view family,
-                                        const Draws& draws);
+                                        const Draws& draws, LeftOut left_out = LeftOut::compound);
 
 /// The same with one knowledge to learn from and another whose records are scored (for trying what a part of
 /// the model brings).
 std::vector<CheckedRecord> check_family(const Knowledge& taught, const Knowledge& scored,
-                                        std::string_view family, const Draws& draws);
+                                        std::string_view family, const Draws& draws,
+                                        LeftOut left_out = LeftOut::compound);
+
+/// A relative rate of a ring with two or more groups, predicted without any measurement on its compound.
+struct CheckedRate {
+    std::string id, substrate;
+    double log10_observed = 0, log10_predicted = 0;
+    double log_score = 0;  // ln of the predictive density of the logarithm
+};
+std::vector<CheckedRate> check_rates(const Knowledge& taught, const Knowledge& scored,
+                                     std::string_view family);
 
 /// Errors, coverage and width are over the isomers observed or predicted above 1 % in complete records, the
 /// log score over complete records, the leading isomer over all.

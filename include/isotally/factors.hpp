@@ -1,6 +1,7 @@
 // Log partial rate factors of the sites of a ring under given conditions, with their covariance.
 #pragma once
 
+#include <functional>
 #include <map>
 #include <memory>
 #include <string>
@@ -44,6 +45,7 @@ struct ObservedRow {
     double value = 0;
     double noise_sd = 0;       // its own
     Kind kind = Kind::figure;  // at_most: known only as "not more than"; rule: of the trade, no measurement
+    double limit = 0, softness = 0;  // at_most: the limit itself; value and noise_sd are its linear stand-in
 };
 
 /// A record of the tables, resolved onto the sites of its compound.
@@ -98,6 +100,10 @@ std::shared_ptr<const FamilyModel> fit_family(const Knowledge& knowledge, std::s
 
 /// The same model without the observations of one compound, exactly as if it had been fitted without them.
 std::shared_ptr<const FamilyModel> leave_out(const FamilyModel& model, std::string_view compound);
+
+/// The same without the observations for which `which` is true.
+std::shared_ptr<const FamilyModel> leave_out(const FamilyModel& model,
+                                             const std::function<bool(const Observation&)>& which);
 
 /// What one group adds to log10 F of a site.
 struct Contribution {

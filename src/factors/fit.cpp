@@ -35,8 +35,8 @@ struct Fit {
 
 struct FamilyModel {
     std::shared_ptr<const Fit> fit;
-    Eigen::VectorXd weights;            // S^-1 (y - H m), over the rows kept
-    std::string left_out;               // compound whose rows are left out
+    Eigen::VectorXd weights;  // S^-1 (y - H m), over the rows kept
+    std::set<const Observation*> left_out;
     Eigen::MatrixXd removed;            // columns of S^-1 that belong to those rows
     Eigen::LLT<Eigen::MatrixXd> inner;  // their block of S^-1
 };
@@ -159,11 +159,18 @@ std::shared_ptr<const FamilyModel> fit_family(const Knowledge& knowledge, std::s
 }
 
 std::shared_ptr<const FamilyModel> leave_out(const FamilyModel& model, std::string_view compound) {
+    return leave_out(model, [&](const Observation& observation) { return observation.compound == compound; });
+}
+
+std::shared_ptr<const FamilyModel> leave_out(const FamilyModel& model,
+                                             const std::function<bool(const Observation&)>& which) {
     auto out = std::make_shared<FamilyModel>(model);
-    out->left_out = compound;
+    for (const auto* observation : model.fit->observations)
+        if (which(*observation))
+            out->left_out.insert(observation);
     std::vector<Eigen::Index> rows;
     for (std::size_t i = 0; i < model.fit->observation_of_row.size(); ++i)
-        if (model.fit->observations[model.fit->observation_of_row[i]]->compound == compound)
+        if (out->left_out.contains(model.fit->observations[model.fit->observation_of_row[i]]))
             rows.push_back(static_cast<Eigen::Index>(i));
     const auto k = static_cast<Eigen::Index>(rows.size());
     if (k == 0)
@@ -232,12 +239,12 @@ Posterior posterior(const FamilyModel& model, const std::vector<Form>& forms) {
 
 /// Who says so: measured on the monosubstituted ring, inferred from others that carry the group,
 /// correlated by its own constants, assumed by another group's.
-void tell_evidence(const Fit& fit, Contribution& contribution, std::string_view left_out) {
+void tell_evidence(const Fit& fit, Contribution& contribution, const std::set<const Observation*>& left_out) {
     bool mono = false, poly = false;
     const auto found = fit.carriers.find({contribution.substituent, contribution.relation});
     if (found != fit.carriers.end())
         for (const auto& [observation, carried] : found->second) {
-            if (observation->compound == left_out)
+            if (left_out.contains(observation))
                 continue;
             (carried == 1 ? mono : poly) = true;
             auto& sources = contribution.sources;
@@ -324,7 +331,7 @@ SiteFactors site_factors(const FamilyModel& model, const Conditions& conditions,
     out.mean.assign(at.mean.data(), at.mean.data() + at.mean.size());
     out.covariance.assign(at.covariance.data(), at.covariance.data() + at.covariance.size());
     for (const auto* observation : fit.observations) {
-        if (observation->compound != compound || compound == model.left_out ||
+        if (observation->compound != compound || model.left_out.contains(observation) ||
             observation->kind != Observation::Kind::shares)
             continue;
         const bool here = observation->conditions.reaction == conditions.reaction;
@@ -359,7 +366,7 @@ std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge&
             std::string best;  // of its three positions
             for (const auto relation : {ortho, meta, para}) {
                 Contribution contribution{static_cast<int>(i), relation, 0, 0, "", {}};
-                tell_evidence(*model->fit, contribution, "");
+                tell_evidence(*model->fit, contribution, {});
                 if (best.empty() || contribution.evidence == "measured" ||
                     (contribution.evidence == "inferred" && best != "measured"))
                     best = contribution.evidence;

@@ -54,7 +54,7 @@ void make_bounds_linear(Knowledge& knowledge, const std::string& family, const s
         for (std::size_t r = 0; use[i] && r < knowledge.observations[i].rows.size(); ++r) {
             const auto& row = knowledge.observations[i].rows[r];
             if (row.kind == ObservedRow::Kind::at_most)
-                bounds.push_back({i, r, row.value, row.noise_sd, {}});
+                bounds.push_back({i, r, row.limit, row.softness, {}});
         }
     for (const auto& bound : bounds)
         write_back(knowledge, bound);

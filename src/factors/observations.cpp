@@ -93,11 +93,13 @@ void add_share_rows(const Tables& tables, const Measurement& record, const std::
     using Kind = ObservedRow::Kind;
     const auto row = [&](std::size_t site, double value, double row_sd, Kind kind) {
         out.rows.push_back(
-            {{{static_cast<int>(site), 1.0}, {static_cast<int>(top), -1.0}}, value, row_sd, kind});
+            {{{static_cast<int>(site), 1.0}, {static_cast<int>(top), -1.0}}, value, row_sd, kind, 0, 0});
     };
     const auto at_most = [&](std::size_t site, double limit) {
-        row(site, std::log10(limit / sites[site].multiplicity) - reference.value, noise.softness,
-            Kind::at_most);
+        const double ratio = std::log10(limit / sites[site].multiplicity) - reference.value;
+        row(site, ratio, noise.softness, Kind::at_most);
+        out.rows.back().limit = ratio;
+        out.rows.back().softness = noise.softness;
     };
     out.shared_sd = reference.sd;
     for (std::size_t i = 0; i < sites.size(); ++i) {
@@ -159,10 +161,11 @@ void add_measurement(Knowledge& knowledge, Measurement& record) {
         return;
     auto out = start(placed, record.id,
                      conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
+    const auto noise = read_noise(tables, row.family);
     // what one lone isomer below "nearly all" leaves open can't be put as a ratio
     if (!(record.products.size() == 1 && record.use != "bound" && placed.sites.size() > 1 &&
-          record.products[0].percent < 95))
-        add_share_rows(tables, record, placed.sites, read_noise(tables, row.family), out);
+          record.products[0].percent < noise.named_percent))
+        add_share_rows(tables, record, placed.sites, noise, out);
     if (!out.rows.empty())
         knowledge.observations.push_back(std::move(out));
 }
@@ -186,7 +189,7 @@ void add_rate(Knowledge& knowledge, RateFigure& record) {
     auto out = start(placed, record.id,
                      conditions_of(tables, reaction, record.temperature_C, record.acid_percent), record.from);
     const double sd = record.sd_log10 * (record.use == "weak" ? read_noise(tables, row.family).weak : 1);
-    ObservedRow observed{{}, std::log10(record.value), sd, ObservedRow::Kind::figure};
+    ObservedRow observed{{}, std::log10(record.value), sd, ObservedRow::Kind::figure, 0, 0};
     out.kind = record.relation.empty() ? Observation::Kind::rate : Observation::Kind::factor;
     if (out.kind == Observation::Kind::factor) {
         for (std::size_t i = 0; i < out.sites.size(); ++i)

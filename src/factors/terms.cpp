@@ -237,7 +237,9 @@ void add_contribution(const Settings& s, const Conditions& conditions, int group
         form.push_back({{Type::ortho_steric_of_conditions, reaction, 0, 0}, w * c.nu});
     }
     form.push_back({{Type::kind_residual, c.kind, relation, 0}, scaled});
-    const bool has_acid = s.knowledge->tables.reactions[static_cast<std::size_t>(reaction)].has_acid;
+    const auto k = static_cast<std::size_t>(c.kind);
+    const bool has_acid = s.knowledge->tables.reactions[static_cast<std::size_t>(reaction)].has_acid &&
+                          s.acid_slope_sd[k][relation] + s.acid_kind_sd[k][relation] > 0;
     const double stronger = has_acid ? (conditions.acid_percent - s.acid_reference_percent) / 10 : 0;
     const double hotter = s.enthalpic ? 0 : (conditions.temperature_C - s.temperature_reference_C) / 10;
     if (has_acid)

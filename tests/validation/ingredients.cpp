@@ -1,6 +1,5 @@
-// What each ingredient of the model brings: it is taken out of the full model, and the left-out scores of
-// nitration-poly and nitration-mono are compared compound by compound. Prints the table of
-// validation/README.md.
+// What each ingredient of the model brings: it is taken out of the full model and put back, and the left-out
+// scores are compared compound by compound. Prints the tables of validation/README.md.
 #include <algorithm>
 #include <cmath>
 #include <cstdio>
@@ -50,10 +49,11 @@ void at_one_temperature(Knowledge& knowledge) {
 }
 
 struct Ingredient {
-    const char* name;
+    const char* name = "";
     std::function<void(Tables&)> tables = [](Tables&) {};
     std::function<void(Knowledge&)> knowledge = [](Knowledge&) {};
     std::function<void(Knowledge&)> asked = [](Knowledge&) {};
+    bool of_conditions = false;  // tried with only the record left out, too
 };
 
 std::vector<Ingredient> ingredients() {
@@ -95,135 +95,143 @@ std::vector<Ingredient> ingredients() {
         at_one_temperature(knowledge);
     };
     plain.asked = at_one_temperature;
+    for (auto& one : list)
+        one.of_conditions = std::string(one.name) == "acid strength" ||
+                            std::string(one.name) == "temperature" ||
+                            std::string(one.name) == "conditions inside the family";
     list.push_back(plain);
     return list;
 }
 
-struct PerCompound {
-    double log_score = 0, log_records = 0, error = 0, error_records = 0;
-};
-
-std::map<std::string, PerCompound> by_compound(const std::vector<CheckedRecord>& records) {
-    std::map<std::string, PerCompound> sums;
-    for (const auto& record : records) {
-        if (!record.complete)
-            continue;
-        auto& one = sums[record.substrate];
-        one.error += record_error(record), ++one.error_records;
-        if (record.has_ratios)
-            one.log_score += record.log_score, ++one.log_records;
-    }
-    return sums;
+Knowledge knowledge_of(const Ingredient& ingredient) {
+    auto tables = parse_tables(read_table_folder(ISOTALLY_SOURCE_DIR "/tables"));
+    ingredient.tables(tables);
+    auto taught = prepare(tables);
+    ingredient.knowledge(taught);
+    return taught;
 }
+
+std::vector<std::string> families_of(const Tables& tables) {
+    std::vector<std::string> families;
+    for (const auto& reaction : tables.reactions)
+        if (std::find(families.begin(), families.end(), reaction.family) == families.end())
+            families.push_back(reaction.family);
+    return families;
+}
+
+/// Differences (full model less the model without the ingredient), summed by family and compound.
+struct Sums {
+    std::map<std::string, std::pair<double, int>> by_compound;
+
+    void add(const std::string& compound, double difference) {
+        auto& [sum, count] = by_compound[compound];
+        sum += difference;
+        ++count;
+    }
+};
 
 struct Gain {
     double mean = 0, standard_error = 0;
 };
 
-Gain gain_of(const std::vector<double>& differences) {
-    const double n = static_cast<double>(differences.size());
+Gain gain_of(const Sums& sums) {
+    const double n = static_cast<double>(sums.by_compound.size());
     Gain gain;
-    for (const double d : differences)
-        gain.mean += d / n;
-    for (const double d : differences)
-        gain.standard_error += (d - gain.mean) * (d - gain.mean) / (n * (n - 1));
+    for (const auto& [compound, one] : sums.by_compound)
+        gain.mean += one.first / one.second / n;
+    for (const auto& [compound, one] : sums.by_compound)
+        gain.standard_error += std::pow(one.first / one.second - gain.mean, 2) / (n * (n - 1));
     gain.standard_error = std::sqrt(gain.standard_error);
     return gain;
 }
 
-std::vector<CheckedRecord> set_named(const Tables& tables, const std::vector<CheckedRecord>& records,
-                                     const char* name) {
-    for (const auto& set : check_sets(tables, records))
-        if (set.name == name)
-            return set.records;
-    return {};
+struct Columns {
+    Sums poly_score, poly_points, score, points, limits, rates;
+};
+
+using Checked = std::map<std::string, std::vector<CheckedRecord>>;
+
+Checked check_all(const Knowledge& taught, const Knowledge& asked, LeftOut left_out) {
+    Checked checked;
+    for (const auto& family : families_of(asked.tables))
+        checked[family] = check_family(taught, asked, family, {}, left_out);
+    return checked;
 }
 
-void print_row(const Ingredient& ingredient, const Knowledge& full, const std::vector<CheckedRecord>& with) {
-    auto tables = parse_tables(read_table_folder(ISOTALLY_SOURCE_DIR "/tables"));
-    ingredient.tables(tables);
-    auto taught = prepare(tables);
-    ingredient.knowledge(taught);
-    auto asked = full;
-    ingredient.asked(asked);
-    const auto without = check_family(taught, asked, "nitration", {});
-    std::printf("| %s |", ingredient.name);
-    for (const char* set : {"nitration-poly", "nitration-mono"}) {
-        const auto before = by_compound(set_named(full.tables, without, set));
-        const auto after = by_compound(set_named(full.tables, with, set));
-        std::vector<double> log_gain, error_gain;
-        for (const auto& [compound, now] : after) {
-            const auto& then = before.at(compound);
-            if (now.log_records > 0)
-                log_gain.push_back(now.log_score / now.log_records - then.log_score / then.log_records);
-            error_gain.push_back(then.error / then.error_records - now.error / now.error_records);
+Columns compare(const Checked& with, const Checked& without) {
+    Columns columns;
+    for (const auto& [family, records] : with)
+        for (const auto& now : records) {
+            const auto& others = without.at(family);
+            const auto then = std::find_if(others.begin(), others.end(),
+                                           [&](const CheckedRecord& record) { return record.id == now.id; });
+            const auto compound = family + " " + now.substrate;
+            const bool poly = family == "nitration" && now.groups > 1 &&
+                              now.reaction.find("nitronium") == now.reaction.npos;
+            if (now.complete) {
+                const double points = record_error(*then) - record_error(now);
+                columns.points.add(compound, points);
+                if (poly)
+                    columns.poly_points.add(compound, points);
+            }
+            if (now.complete && now.has_ratios) {
+                const double score = now.log_score - then->log_score;
+                columns.score.add(compound, score);
+                if (poly)
+                    columns.poly_score.add(compound, score);
+            }
+            if (now.limits > 0)
+                columns.limits.add(compound, now.limits_log_probability - then->limits_log_probability);
         }
-        const auto l = gain_of(log_gain), e = gain_of(error_gain);
-        std::printf(" %+.2f (%.2f) | %+.1f (%.1f) |", l.mean, l.standard_error, e.mean, e.standard_error);
-    }
-    std::printf("\n");
+    return columns;
 }
 
-/// Mean error in points of the records of a series, each predicted with only itself left out: the other
-/// records of its compound stay, so that what temperature and acid do to one ring is put to the test.
-double series_error(const Knowledge& taught, const Knowledge& full,
-                    const std::vector<CheckedRecord>& series) {
-    std::vector<double> errors;
-    for (const auto& record : series) {
-        if (!record.complete)
+void compare_rates(const Knowledge& full, const Knowledge& taught, const Knowledge& asked, Columns& columns) {
+    for (const auto& family : families_of(full.tables)) {
+        const auto with = check_rates(full, full, family), without = check_rates(taught, asked, family);
+        for (std::size_t i = 0; i < with.size(); ++i)
+            columns.rates.add(family + " " + with[i].substrate, with[i].log_score - without[i].log_score);
+    }
+}
+
+void print_gain(const Sums& sums, int digits) {
+    const auto gain = gain_of(sums);
+    const double least_shown = 0.5 * std::pow(10.0, -digits);
+    std::printf(" %+.*f (%.*f)%s |", digits, gain.mean, digits, gain.standard_error,
+                gain.mean > std::max(gain.standard_error, least_shown) ? " *" : "");
+}
+
+void print_table(const Knowledge& full, LeftOut left_out) {
+    const bool compound = left_out == LeftOut::compound;
+    std::printf("\n| ingredient | nitration-poly: log score | nitration-poly: points | all: log score | "
+                "all: points |%s\n|---|---|---|---|---|%s\n",
+                compound ? " limits | rates |" : "", compound ? "---|---|" : "");
+    const auto with = check_all(full, full, left_out);
+    for (const auto& ingredient : ingredients()) {
+        if (!compound && !ingredient.of_conditions)
             continue;
-        std::vector<bool> use(taught.observations.size());
-        const Observation* asked = nullptr;
-        for (std::size_t i = 0; i < use.size(); ++i)
-            use[i] = taught.observations[i].id != record.id;
-        for (const auto& observation : full.observations)
-            if (observation.id == record.id && observation.kind == Observation::Kind::shares)
-                asked = &observation;
-        const auto model = factors::fit_rows(taught, "nitration", use);
-        const auto at = site_factors(*model, asked->conditions, asked->compound, asked->sites, false);
-        const auto percent = isomer_percents(asked->sites, at.mean);
-        auto predicted = record;
-        for (std::size_t i = 0; i < percent.size(); ++i)
-            predicted.isomers[i].predicted_percent = percent[i];
-        errors.push_back(record_error(predicted));
-    }
-    double sum = 0;
-    for (const double error : errors)
-        sum += error;
-    return sum / static_cast<double>(errors.size());
-}
-
-void print_series(const Knowledge& full, const std::vector<CheckedRecord>& with) {
-    std::printf("\n| ingredient taken out | nitration-temperature, points | nitration-acid, points "
-                "|\n|---|---|---|\n");
-    const auto line = [&](const Ingredient& ingredient) {
-        auto tables = parse_tables(read_table_folder(ISOTALLY_SOURCE_DIR "/tables"));
-        ingredient.tables(tables);
-        auto taught = prepare(tables);
-        ingredient.knowledge(taught);
+        const auto taught = knowledge_of(ingredient);
         auto asked = full;
         ingredient.asked(asked);
+        auto columns = compare(with, check_all(taught, asked, left_out));
         std::printf("| %s |", ingredient.name);
-        for (const char* set : {"nitration-temperature", "nitration-acid"})
-            std::printf(" %.2f |", series_error(taught, asked, set_named(full.tables, with, set)));
+        print_gain(columns.poly_score, 3);
+        print_gain(columns.poly_points, 2);
+        print_gain(columns.score, 3);
+        print_gain(columns.points, 2);
+        if (compound) {
+            compare_rates(full, taught, asked, columns);
+            print_gain(columns.limits, 3);
+            print_gain(columns.rates, 3);
+        }
         std::printf("\n");
-    };
-    line({"none"});
-    for (const auto& ingredient : ingredients())
-        if (const std::string name = ingredient.name;
-            name == "temperature" || name == "acid strength" || name == "conditions inside the family")
-            line(ingredient);
+    }
 }
 
 }  // namespace
 
 int main() {
-    const auto full = prepare(parse_tables(read_table_folder(ISOTALLY_SOURCE_DIR "/tables")));
-    const auto with = check_family(full, "nitration", {});
-    std::printf("| ingredient | poly: log score gained | poly: points gained | mono: log score gained | "
-                "mono: points gained |\n"
-                "|---|---|---|---|---|\n");
-    for (const auto& ingredient : ingredients())
-        print_row(ingredient, full, with);
-    print_series(full, with);
+    const auto full = knowledge_of({});
+    print_table(full, LeftOut::compound);
+    print_table(full, LeftOut::record);
 }

@@ -102,6 +102,24 @@ def polymethylbenzene_rates(program):
     return {"records": len(ratios), "within_a_factor_of_two": within, "rates": ratios}
 
 
+def score_table(scores):
+    """The table of validation/README.md, from the scores of `isotally check --all`."""
+    digits = (1, 2, 2, 1, 2)
+    lines = ["| set | records | mean error, points | leading isomer right | 90 % interval holds | mean width, points | "
+             "log score |", "|---|---|---|---|---|---|---|"]
+    for name, entry in scores.items():
+        if name.endswith("-partial") or entry["records"] < 5:
+            continue
+        cells = [f"{entry[figure]:.{n}f} [{entry[f'{figure}_range'][0]:.{n}f}, {entry[f'{figure}_range'][1]:.{n}f}]"
+                 for figure, n in zip(FIGURES, digits)]
+        lines.append(f"| {name} | {entry['records']} | {' | '.join(cells)} |")
+    return "\n".join(lines) + "\n"
+
+
+def with_score_table(text, scores):
+    return re.sub(r"\| set \| records \|.*?\n(?=\n)", lambda _: score_table(scores), text, count=1, flags=re.S)
+
+
 def differences(wanted, found, path=""):
     if isinstance(wanted, dict) and isinstance(found, dict):
         for key in sorted(wanted.keys() | found.keys()):
@@ -127,6 +145,14 @@ def main():
         now[folder / "scores.json"] = scores_by_correlation(program, folder)
     now[VALIDATION / "polymethylbenzene-rates" / "scores.json"] = polymethylbenzene_rates(program)
     failed = False
+    page = VALIDATION / "README.md"
+    text = page.read_text(encoding="utf-8")
+    wanted = with_score_table(text, now[VALIDATION / "scores.json"])
+    if arguments.rewrite:
+        page.write_text(wanted, encoding="utf-8")
+    elif wanted != text:
+        print("validation/README.md: its table is not that of the scores")
+        failed = True
     for path, scores in now.items():
         if arguments.rewrite:
             path.write_text(json.dumps(scores, indent=1) + "\n", encoding="utf-8")
