@@ -314,11 +314,8 @@ double record_error(const CheckedRecord& record) {
 std::string likely_reason(const Tables& tables, const CheckedRecord& record) {
     const auto molecule = read_molecule(record.substrate);
     for (const auto& row : tables.cautions) {
-        const bool holds =
-            std::any_of(row.reactions.begin(), row.reactions.end(), [&](const std::string& word) {
-                return word == "*" || word == record.reaction || word == record.family;
-            });
-        if (row.code.starts_with("additivity-") && holds &&
+        if (row.code.starts_with("additivity-") &&
+            applies_to(row.reactions, record.reaction, record.family) &&
             count_matches(*molecule, *read_pattern(row.substrate_smarts, "cautions.csv:" + row.code)) > 0)
             return row.text;
     }

@@ -4,6 +4,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <limits>
 #include <map>
 
 namespace isotally {
@@ -20,19 +21,14 @@ std::optional<double> figure(const Reaction& reaction, const char* quantity) {
     return found->second.value;
 }
 
-bool applies(const std::vector<std::string>& reactions, const Reaction& reaction) {
-    return std::any_of(reactions.begin(), reactions.end(), [&](const std::string& word) {
-        return word == "*" || word == reaction.id || word == reaction.family;
-    });
-}
-
-/// Nitroso counts: nitric acid makes nitro of it.
-constexpr const char* nitro = "[$([NX3](=O)=O),$([NX3+](=O)[O-]),$([NX2]=O)]-[#6]";
-constexpr const char* nitro_smiles = "*[N+](=O)[O-]";
-/// A sulfo group ortho or para to a hydroxyl or amino group is displaced by nitro, so it counts as one.
+/// Nitro on anything but oxygen and nitrogen (those are named energetic groups). Nitroso counts: nitric acid
+/// makes nitro of it; so does the aci form.
+constexpr const char* nitro =
+    "[$([NX3](=O)=O),$([NX3+](=O)[O-]),$([NX2]=O),$([NX3+](=[#6])([O-])[O])]~[!#8;!#7]";
+/// A sulfo group ortho or para to an oxygen or amino group is displaced by nitro, so it counts as one.
 constexpr const char* displaceable_sulfo =
-    "[$(c:c-[$([OX2H]),$([NX3;+0;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])]),"
-    "$(c:c:c:c-[$([OX2H]),$([NX3;+0;!$(N-C=O);!$(N-S=O);!$([NX3](=O)=O)])])]-S(=O)(=O)[OX2H,OX1-]";
+    "[$(c:c-[$([OX2]),$([NX3;+0;!$([NX3](=O)=O)])]),"
+    "$(c:c:c:c-[$([OX2]),$([NX3;+0;!$([NX3](=O)=O)])])]-S(=O)(=O)[OX2H,OX1-]";
 constexpr int most_nitro = 2;
 
 }  // namespace
@@ -47,9 +43,14 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
                       0};
     if (reaction.has_acid)
         chosen.acid_percent = acid_percent.value_or(figure(reaction, "acid_default_percent").value_or(0));
+    // a limit that the tables do not give holds nobody up
+    const auto limit = [&](std::string_view quantity) {
+        const double none = std::numeric_limits<double>::infinity();
+        return figure(reaction, quantity.data())
+            .value_or(quantity.find("_min") == quantity.npos ? none : -none);
+    };
     const auto outside = [&](double value, const char* low, const char* high) {
-        return !(value >= figure(reaction, low).value_or(-1e9) &&
-                 value <= figure(reaction, high).value_or(1e9));
+        return !(value >= limit(low) && value <= limit(high));
     };
     const bool enthalpic = model_figure(tables, reaction.family, "enthalpic").value != 0;
     const char* low = enthalpic ? "temperature_min_C" : "temperature_series_min_C";
@@ -61,8 +62,7 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
             reaction.id,
             fmt::format("{:g} C lies outside what is known of {} ({:g} to {:g} C); ask inside that "
                         "range, or measure",
-                        chosen.temperature_C, reaction.name, *figure(reaction, low),
-                        *figure(reaction, high))};
+                        chosen.temperature_C, reaction.name, limit(low), limit(high))};
     if (reaction.has_acid && outside(chosen.acid_percent, "acid_min_percent", "acid_max_percent")) {
         std::string other;
         for (const auto& candidate : tables.reactions)
@@ -70,10 +70,9 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
                 chosen.acid_percent >= figure(candidate, "acid_min_percent").value_or(1e9) &&
                 chosen.acid_percent <= figure(candidate, "acid_max_percent").value_or(-1e9))
                 other = "; that is " + candidate.id;
-        return Refusal{reaction.id,
-                       fmt::format("{:g} % sulfuric acid lies outside {} ({:g} to {:g} %){}",
-                                   chosen.acid_percent, reaction.name, *figure(reaction, "acid_min_percent"),
-                                   *figure(reaction, "acid_max_percent"), other)};
+        return Refusal{reaction.id, fmt::format("{:g} % sulfuric acid lies outside {} ({:g} to {:g} %){}",
+                                                chosen.acid_percent, reaction.name, limit("acid_min_percent"),
+                                                limit("acid_max_percent"), other)};
     }
     return chosen;
 }
@@ -114,20 +113,20 @@ std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, 
     const auto nitro_group = read_pattern(nitro, "nitro");
     if (auto declined = decline(tables, *arene.molecule, *nitro_group))
         return declined;
-    if (reaction.new_group == nitro_smiles) {
+    if (count_matches(*read_molecule(reaction.new_group), *nitro_group) > 0) {
         const int nitro_groups = count_matches(*arene.molecule, *nitro_group);
         const int sulfo_groups = count_matches(*arene.molecule, *read_pattern(displaceable_sulfo, "sulfo"));
         if (nitro_groups + sulfo_groups + 1 > most_nitro)
             return Refusal{
                 reaction.id,
-                fmt::format("{} would bring a third nitro group{}: isotally declines more than two",
-                            reaction.name,
-                            sulfo_groups > 0
-                                ? " (a sulfo group on a phenol or aniline is displaced and counts as one)"
-                                : "")};
+                fmt::format(
+                    "{} would bring a third nitro group{}: isotally declines more than two", reaction.name,
+                    sulfo_groups > 0
+                        ? " (a sulfo group on a phenol, ether or aniline is displaced and counts as one)"
+                        : "")};
     }
     for (const auto& ban : tables.bans) {
-        if (ban.id.starts_with("energetic-") || !applies(ban.reactions, reaction))
+        if (ban.id.starts_with("energetic-") || !applies_to(ban.reactions, reaction))
             continue;
         const std::string where = "bans.csv:" + ban.id;
         if (!has(*arene.molecule, ban.smarts, where))
@@ -180,7 +179,7 @@ std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& aren
     const auto& reaction = reaction_of(tables, conditions);
     std::vector<std::pair<int, ProductCaution>> found;
     for (const auto& caution : tables.cautions) {
-        if (caution.severity == 0 || !applies(caution.reactions, reaction))
+        if (caution.severity == 0 || !applies_to(caution.reactions, reaction))
             continue;
         const std::string where = "cautions.csv:" + caution.code;
         if (!caution.substrate_smarts.empty() && !has(*arene.molecule, caution.substrate_smarts, where))
@@ -226,7 +225,7 @@ std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene&
     if (!reaction.note.empty())
         notes.push_back(reaction.note);
     for (const auto& note : tables.cautions)
-        if (note.severity == 0 && applies(note.reactions, reaction) &&
+        if (note.severity == 0 && applies_to(note.reactions, reaction) &&
             (note.substrate_smarts.empty() ||
              has(*arene.molecule, note.substrate_smarts, "cautions.csv:" + note.code)))
             notes.push_back(note.text);

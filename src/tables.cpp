@@ -53,6 +53,15 @@ int find_reaction(const Tables& tables, std::string_view id) {
     return index_of(tables.reactions, id);
 }
 
+bool applies_to(const std::vector<std::string>& reactions, std::string_view id, std::string_view family) {
+    return std::any_of(reactions.begin(), reactions.end(),
+                       [&](const std::string& word) { return word == "*" || word == id || word == family; });
+}
+
+bool applies_to(const std::vector<std::string>& reactions, const Reaction& reaction) {
+    return applies_to(reactions, reaction.id, reaction.family);
+}
+
 const Figure& model_figure(const Tables& tables, std::string_view family, std::string_view quantity) {
     const Figure* general = nullptr;
     std::vector<std::string> quantities;

@@ -251,6 +251,8 @@ TEST(Arene, RefusesWithTheReason) {
         {"Cc1ccccc1.CO", "mixture"},
         {"[Li+].[O-]c1ccccc1", "mixture"},
         {"[Na+].[Cl-]", "counter-ions only"},
+        {"Cc1ccccc1.[Na+]", "charges of the salt"},
+        {"[Na+].[Na+].[O-]c1ccccc1", "charges of the salt"},
         {"[2H]c1ccccc1", "isotope"},
         {"[13CH3]c1ccccc1", "isotope"},
         {"[CH2]c1ccccc1", "radical"},
@@ -390,6 +392,17 @@ TEST(AreneMolfile, CutOrLyingFilesNameTheLine) {
     EXPECT_EQ(where(changed(v3000, "COUNTS 8 7", "COUNTS 30 30")), "molfile line 6");
     EXPECT_EQ(where(changed(v3000, "COUNTS 8 7", "NOTHING")), "molfile line 4");
     EXPECT_EQ(where(changed(v2000, "  1  2  1  0", "  1 77  1  0")), "molfile line 15");
+}
+
+TEST(AreneMolfile, QueriesAreNoMolecules) {
+    std::string text = v2000;
+    text.replace(text.find("M  END"), 6, "M  ALS   1  2 F Cl  Br  \nM  END");
+    try {
+        const auto read = parse_molfile(tables(), knowledge().groups, text);
+        FAIL() << "a list of atoms was read";
+    } catch (const Error& error) {
+        EXPECT_THAT(error.what(), HasSubstr("query"));
+    }
 }
 
 }  // namespace

@@ -50,6 +50,17 @@ TEST(BuiltIn, AnswersAreThoseOfTheFolder) {
     EXPECT_GT(answered_ones, 100);
 }
 
+TEST(BuiltIn, OtherTablesCanNotLiftWhatDeclinesEnergeticMolecules) {
+    auto other = built_in_knowledge().tables;
+    EXPECT_TRUE(missing_safety_rows(other).empty());
+    const auto azide = std::find_if(other.bans.begin(), other.bans.end(),
+                                    [](const Ban& ban) { return ban.id == "energetic-azide"; });
+    ASSERT_NE(azide, other.bans.end());
+    azide->smarts = "[Xe]";
+    std::erase_if(other.bans, [](const Ban& ban) { return ban.id == "energetic-peroxide"; });
+    EXPECT_EQ(missing_safety_rows(other).size(), 2);
+}
+
 TEST(BuiltIn, FilesAreThoseOfTheFolder) {
     expect_same_files(built_in_files(), read_table_folder(folder));
     EXPECT_EQ(built_in_knowledge().tables.digest, parse_tables(built_in_files()).digest);

@@ -167,6 +167,28 @@ TEST(Reactivity, NitroBesideAnotherEnergeticGroup) {
     EXPECT_EQ(declined("toluene"), "");
 }
 
+// Common practice, no source: nitrating acid makes nitrate esters of alcohols, takes up alkenes and thiols.
+TEST(Reactivity, SideChainsThatTheReagentTakesFirst) {
+    EXPECT_THAT(refused_because("OCCc1ccccc1", "nitration-mixed-acid"), HasSubstr("nitrate ester"));
+    EXPECT_THAT(refused_because("OCCc1ccccc1", "acetylation-lewis-acid"), HasSubstr("alcohol"));
+    EXPECT_THAT(refused_because("C=CCc1ccccc1", "nitration-mixed-acid"), HasSubstr("double"));
+    EXPECT_THAT(refused_because("SCc1ccccc1", "nitration-mixed-acid"), HasSubstr("thiol"));
+    EXPECT_THAT(refused_because("NCCc1ccccc1", "nitration-acetyl-nitrate"), HasSubstr("on nitrogen"));
+    EXPECT_EQ(refused_because("NCCc1ccccc1", "nitration-mixed-acid"), "") << "goes as the ammonium ion";
+    EXPECT_EQ(refused_because("OC(=O)Cc1ccccc1", "nitration-mixed-acid"), "") << "an acid is no alcohol";
+}
+
+TEST(Reactivity, NitroHoweverItIsWritten) {
+    auto other = tables();
+    other.reactions[static_cast<std::size_t>(reaction("nitration-mixed-acid"))].new_group = "*N(=O)=O";
+    const auto arene =
+        answered(parse_arene(other, knowledge().groups, "O=[N+]([O-])c1cccc([N+](=O)[O-])c1"), "arene");
+    const auto conditions = answered(choose("nitration-mixed-acid"), "defaults");
+    const auto refused = refuse_by_name(other, arene, conditions, {});
+    ASSERT_TRUE(refused);
+    EXPECT_THAT(refused->reason, HasSubstr("third nitro group"));
+}
+
 TEST(Reactivity, SulfoOnAPhenolCountsAsNitroWhenNitrated) {
     // practice: the sulfo group is displaced and highly nitrated phenols form.
     const auto* strong = "nitration-strong-acid";
@@ -176,6 +198,8 @@ TEST(Reactivity, SulfoOnAPhenolCountsAsNitroWhenNitrated) {
         << "sulfo at para";
     EXPECT_THAT(refused_because("Oc1ccc([N+](=O)[O-])cc1S(=O)(=O)O", strong), HasSubstr("declines"))
         << "sulfo at ortho";
+    EXPECT_THAT(refused_because("COc1ccc(S(=O)(=O)O)cc1S(=O)(=O)O", strong), HasSubstr("declines"))
+        << "an ether as well";
     EXPECT_THAT(refused_because("Nc1ccc(S(=O)(=O)O)cc1[N+](=O)[O-]", strong), HasSubstr("declines"))
         << "an aniline";
     EXPECT_THAT(refused_because("Oc1ccc(S(=O)(=O)O)cc1", "nitration-dilute-acid"),

@@ -13,6 +13,9 @@
 
 namespace isotally {
 
+/// Longest molfile that is read, in bytes.
+inline constexpr std::size_t longest_molfile = 1u << 20;
+
 /// The groups of the tables as they are found on a ring: key of the group (a canonical form made by
 /// the toolkit) to its index in Tables::substituents. Made once by index_groups.
 struct GroupIndex {

@@ -11,6 +11,10 @@ namespace isotally {
 /// Knowledge made from the built-in tables; no file is read.
 Knowledge built_in_knowledge();
 
+/// Rows of the built-in bans.csv that decline energetic molecules and are missing from `tables` or altered
+/// there: other tables may add to them, never take from them.
+std::vector<Fault> missing_safety_rows(const Tables& tables);
+
 /// The built-in files of tables/, byte for byte.
 std::vector<TableFile> built_in_files();
 

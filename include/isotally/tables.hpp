@@ -177,6 +177,10 @@ Tables parse_tables(const std::vector<TableFile>& files);
 int find_substituent(const Tables& tables, std::string_view id);
 int find_reaction(const Tables& tables, std::string_view id);
 
+/// Whether a row's `reactions` (ids, families or "*") name this one.
+bool applies_to(const std::vector<std::string>& reactions, std::string_view id, std::string_view family);
+bool applies_to(const std::vector<std::string>& reactions, const Reaction& reaction);
+
 /// The figure of model.csv for this family, else that for "all". Throws Error{tables} if neither stands.
 const Figure& model_figure(const Tables& tables, std::string_view family, std::string_view quantity);
 

@@ -89,6 +89,9 @@ Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit
     }
     if (!kept)
         return Refusal{"molecule", "it holds counter-ions only, no benzene ring"};
+    if (const int charge = RDKit::MolOps::getFormalCharge(*mol); charge != 0)
+        return Refusal{"molecule",
+                       fmt::format("the charges of the salt do not cancel: {:+d} is left over", charge)};
     neutralise(*kept);
     return kept;
 }

@@ -8,8 +8,6 @@
 namespace isotally::toolkit {
 namespace {
 
-inline constexpr std::size_t longest_molfile = 1u << 20;
-
 [[noreturn]] void fail(std::size_t line, const std::string& message) {
     throw Error(ErrorKind::input, line ? fmt::format("molfile line {}", line) : "molfile", message);
 }
@@ -117,6 +115,14 @@ std::unique_ptr<RDKit::RWMol> read_molfile(std::string_view text) {
         fail(0, "it holds no molecule");
     if (mol->getNumAtoms() > most_atoms)
         fail(0, fmt::format("{} atoms, at most {} are read", mol->getNumAtoms(), most_atoms));
+    for (const auto* atom : mol->atoms())
+        if (atom->hasQuery())
+            fail(0, fmt::format("atom {} is a query (a list or a class of elements), not an element",
+                                atom->getIdx() + 1));
+    for (const auto* bond : mol->bonds())
+        if (bond->hasQuery())
+            fail(0,
+                 fmt::format("bond {} is a query (several orders at once), not a bond", bond->getIdx() + 1));
     return mol;
 }
 

@@ -137,7 +137,10 @@ void add_check(CLI::App& program, Options& options) {
 Knowledge load(const Options& options) {
     if (options.tables_folder.empty())
         return built_in_knowledge();
-    return prepare(parse_tables(read_table_folder(options.tables_folder)));
+    auto tables = parse_tables(read_table_folder(options.tables_folder));
+    if (const auto faults = missing_safety_rows(tables); !faults.empty())
+        throw Error(ErrorKind::tables, faults.front().where, faults.front().message);
+    return prepare(std::move(tables));
 }
 
 bool wants_json(int argc, char** argv) {
@@ -189,7 +192,12 @@ int run(int argc, char** argv, std::ostream& out) {
         return cli::step_command(options.step, load(options), std::cin, out, std::cerr);
     if (program.got_subcommand("check"))
         return cli::check_command(options.check, load(options), out);
-    options.tables.chemistry_faults = lint_chemistry;
+    options.tables.chemistry_faults = [](const Tables& tables) {
+        auto faults = lint_chemistry(tables);
+        for (auto& fault : missing_safety_rows(tables))
+            faults.push_back(std::move(fault));
+        return faults;
+    };
     options.tables.evidence_counts = [](const Tables& tables) { return count_evidence(prepare(tables)); };
     const auto files =
         options.tables_folder.empty() ? built_in_files() : read_table_folder(options.tables_folder);

@@ -25,9 +25,11 @@ Answer<Arene> from_molfile(const Knowledge& knowledge, const std::string& path) 
     std::ifstream file(path, std::ios::binary);
     if (!file || !std::filesystem::is_regular_file(path))
         throw Error(ErrorKind::input, path, "the molfile can't be opened");
-    std::string text((std::istreambuf_iterator<char>(file)), {});
-    if (file.bad() || (text.empty() && !file.eof()))
+    std::string text(longest_molfile + 1, '\0');
+    file.read(text.data(), static_cast<std::streamsize>(text.size()));
+    if (file.bad())
         throw Error(ErrorKind::input, path, "the molfile can't be read");
+    text.resize(static_cast<std::size_t>(file.gcount()));
     try {
         return parse_molfile(knowledge.tables, knowledge.groups, text);
     } catch (const Error& e) {

@@ -138,10 +138,7 @@ void add_rows(const TablesView& view, std::vector<RelatedRows>& all, const char*
 }
 
 bool concerns(const Record& row, const Record& reaction) {
-    const Words words = split_at_blanks(row.text("reactions"));
-    return std::any_of(words.begin(), words.end(), [&](const std::string& word) {
-        return word == "*" || word == reaction.text("id") || word == reaction.text("family");
-    });
+    return applies_to(split_at_blanks(row.text("reactions")), reaction.text("id"), reaction.text("family"));
 }
 
 std::string field_lines(const TablesView& view, const FileSchema& schema, const Record& record) {

@@ -22,11 +22,7 @@ std::vector<GroupState> resolve_states(const Tables& tables) {
     std::vector<GroupState> states;
     for (std::size_t r = 0; r < tables.reactions.size(); ++r)
         for (const auto& row : tables.states) {
-            const auto holds_for = [&](const std::string& word) {
-                return std::find(row.reactions.begin(), row.reactions.end(), word) != row.reactions.end();
-            };
-            if (!holds_for(tables.reactions[r].id) && !holds_for(tables.reactions[r].family) &&
-                !holds_for("*"))
+            if (!applies_to(row.reactions, tables.reactions[r]))
                 continue;
             for (std::size_t g = 0; g < tables.substituents.size(); ++g)
                 if (is_group(tables.substituents[g], row.group))

@@ -243,6 +243,17 @@ void check_used_constants(const FileSchema& schema, const std::vector<Record>& r
     }
 }
 
+/// Temperatures and rho may be below zero, an ortho:para ratio none; all else is an amount over zero.
+void check_reaction_figure(const Record& record, const RecordChecks& checks) {
+    const std::string& quantity = record.text("quantity");
+    if (record.at("value").kind != Cell::Kind::number || quantity.ends_with("_C") || quantity == "rho" ||
+        quantity.starts_with("ortho_para_"))
+        return;
+    if (!(record.number("value") > 0))
+        checks.fault(record, "value",
+                     "found " + record.text("value") + ", expected more than 0 for " + quantity);
+}
+
 void check_kind(const FileSchema& schema, const std::vector<Record>& records, const RecordChecks& checks,
                 const Known& known, FaultList& faults) {
     if (schema.kind == "constants")
@@ -256,6 +267,8 @@ void check_kind(const FileSchema& schema, const std::vector<Record>& records, co
             check_substituent(record, like, checks);
         if (schema.kind == "measurements")
             check_measurement(record, checks);
+        if (schema.file == "reaction_figures.csv")
+            check_reaction_figure(record, checks);
         if (schema.kind == "reactions" && usable(record.at("new_group")) &&
             !record.text("new_group").starts_with("*"))
             checks.fault(record, "new_group",
