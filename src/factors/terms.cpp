@@ -65,6 +65,7 @@ GroupConstants look_up_constants(const Tables& tables, double stand_in_sd, doubl
     }
     const auto kind = std::find(kinds.begin(), kinds.end(), group->kind);
     c.kind = static_cast<int>(kind - kinds.begin());
+    c.draws_off = group->kind == "acceptor" || group->kind == "cation";
     const auto look = [&](std::initializer_list<const char*> quantities, double& value, double& sd,
                           std::string* source) {
         const auto* at = group;
@@ -227,7 +228,7 @@ void add_contribution(const Settings& s, const Conditions& conditions, int group
     const double sigma = relation == meta ? c.sigma_meta : c.sigma_para;
     form.push_back({{Type::rho, 0, 0, 0}, scaled * sigma});
     form.push_back({{Type::rho_of_conditions, reaction, 0, 0}, w * sigma});
-    if (relation == para && (c.kind == 3 || c.kind == 4))
+    if (relation == para && c.draws_off)
         form.push_back({{Type::acceptor_para, 0, 0, 0}, scaled});
     if (relation == ortho) {
         form.push_back({{Type::ortho_offset, 0, 0, 0}, w});

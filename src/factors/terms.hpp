@@ -62,6 +62,7 @@ inline constexpr std::array<const char*, 2> corrections{"flanked", "buttressed"}
 /// Constants of a group with the stand-ins for missing ones.
 struct GroupConstants {
     int kind = 0;
+    bool draws_off = false;  // an acceptor or a cation
     double sigma_para = 0, sigma_meta = 0, nu = 0;
     double sd_para = 0, sd_meta = 0, sd_nu = 0;
     int head = -1;         // of its series: the group it is like, through all steps (itself if none)
