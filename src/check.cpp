@@ -313,10 +313,11 @@ double record_error(const CheckedRecord& record) {
 
 std::string likely_reason(const Tables& tables, const CheckedRecord& record) {
     const auto molecule = read_molecule(record.substrate);
+    const auto workspace = new_workspace();
     for (const auto& row : tables.cautions) {
         if (row.code.starts_with("additivity-") &&
             applies_to(row.reactions, record.reaction, record.family) &&
-            count_matches(*molecule, *read_pattern(row.substrate_smarts, "cautions.csv:" + row.code)) > 0)
+            occurs(*workspace, *molecule, row.substrate_smarts, row.code))
             return row.text;
     }
     return {};

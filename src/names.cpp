@@ -46,21 +46,44 @@ bool cite_prefixes(const Tables& tables, const RingGroups& groups, Plan& plan) {
     return true;
 }
 
-template <class Key>
-Locants lowest_numbering(Key key) {
-    Locants best{};
-    std::vector<int> best_key;
-    for (int start = 0; start < 6; ++start)
-        for (int step : {1, 5}) {
-            Locants locants{};
-            for (int i = 0; i < 6; ++i)
-                locants[static_cast<std::size_t>((start + step * i) % 6)] = i + 1;
-            std::vector<int> found = key(locants);
-            if (best_key.empty() || found < best_key)
-                best = locants, best_key = std::move(found);
+/// Numberings that are still in the running.
+class Numberings {
+public:
+    Numberings() {
+        for (std::size_t start = 0; start < 6; ++start)
+            for (const std::size_t step : {1u, 5u}) {
+                Locants locants{};
+                for (std::size_t i = 0; i < 6; ++i)
+                    locants[(start + step * i) % 6] = static_cast<int>(i) + 1;
+                left_[count_++] = locants;
+            }
+    }
+
+    /// Those that give these positions the lowest locants go on. A set of locants is a number whose digit for
+    /// locant 1 comes first: the lower set has the larger number, as all sets hold equally many.
+    void lowest(const std::vector<int>& positions) {
+        if (count_ == 1 || positions.empty())
+            return;
+        std::array<unsigned, 12> set{};
+        unsigned best = 0;
+        for (std::size_t i = 0; i < count_; ++i) {
+            for (const int position : positions)
+                set[i] += 1u << (4 * (6 - left_[i][static_cast<std::size_t>(position)]));
+            best = std::max(best, set[i]);
         }
-    return best;
-}
+        std::size_t kept = 0;
+        for (std::size_t i = 0; i < count_; ++i)
+            if (set[i] == best)
+                left_[kept++] = left_[i];
+        count_ = kept;
+    }
+
+    const Locants& first() const { return left_[0]; }
+
+private:
+    std::array<Locants, 12> left_{};
+    std::size_t count_ = 0;
+};
 
 std::vector<Cited> by_id(const Tables& tables, const RingGroups& groups) {
     std::vector<Cited> out;
@@ -71,35 +94,29 @@ std::vector<Cited> by_id(const Tables& tables, const RingGroups& groups) {
     return out;
 }
 
-std::vector<int> together(const std::vector<Cited>& list, const Locants& locants,
-                          std::vector<int> Cited::*where) {
+std::vector<int> together(const std::vector<Cited>& list, std::vector<int> Cited::*where) {
     std::vector<int> all;
     for (const Cited& cited : list)
         all.insert(all.end(), (cited.*where).begin(), (cited.*where).end());
-    return sorted_locants(all, locants);
+    return all;
 }
 
 Locants number_ring(const Tables& tables, const RingGroups& groups, const Plan& plan) {
     const std::vector<Cited> ids = by_id(tables, groups);
-    return lowest_numbering([&](const Locants& locants) {
-        std::vector<int> key{0};
-        const auto add = [&](const std::vector<int>& more) {
-            key.insert(key.end(), more.begin(), more.end());
-        };
-        const auto add_each = [&](const std::vector<Cited>& list, std::vector<int> Cited::*where) {
-            for (const Cited& cited : list)
-                add(sorted_locants(cited.*where, locants));
-        };
-        add(sorted_locants(plan.principal, locants));
-        add(together(plan.cited, locants, &Cited::ring));
-        add(together(plan.cited, locants, &Cited::nitrogen));
-        add_each(plan.cited, &Cited::ring);
-        add_each(plan.cited, &Cited::nitrogen);
-        add_each(plan.esters, &Cited::ring);
-        add(together(ids, locants, &Cited::ring));
-        add_each(ids, &Cited::ring);
-        return key;
-    });
+    Numberings numberings;
+    const auto lowest_each = [&](const std::vector<Cited>& list, std::vector<int> Cited::*where) {
+        for (const Cited& cited : list)
+            numberings.lowest(cited.*where);
+    };
+    numberings.lowest(plan.principal);
+    numberings.lowest(together(plan.cited, &Cited::ring));
+    numberings.lowest(together(plan.cited, &Cited::nitrogen));
+    lowest_each(plan.cited, &Cited::ring);
+    lowest_each(plan.cited, &Cited::nitrogen);
+    lowest_each(plan.esters, &Cited::ring);
+    numberings.lowest(together(ids, &Cited::ring));
+    lowest_each(ids, &Cited::ring);
+    return numberings.first();
 }
 
 // A ring on a ring and an azo group are parents of their own, which only senior suffixes overrule.

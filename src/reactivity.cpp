@@ -21,12 +21,12 @@ std::optional<double> figure(const Reaction& reaction, const char* quantity) {
     return found->second.value;
 }
 
-/// Nitro on anything but oxygen and nitrogen (those are named energetic groups). Nitroso counts: nitric acid
-/// makes nitro of it; so does the aci form.
-constexpr const char* nitro =
-    "[$([NX3](=O)=O),$([NX3+](=O)[O-]),$([NX2]=O),$([NX3+](=[#6])([O-])[O])]~[!#8;!#7]";
+/// The nitrogen of nitro on anything but oxygen and nitrogen (those are named energetic groups). Nitroso
+/// counts: nitric acid makes nitro of it; so does the aci form.
+const std::string nitro = "[$([NX3](=O)(=O)~[!#8;!#7]),$([NX3+](=O)([O-])~[!#8;!#7]),$([NX2](=O)~[!#8;!#7]),"
+                          "$([NX3+](=[#6])([O-])[O])]";
 /// A sulfo group ortho or para to an oxygen or amino group is displaced by nitro, so it counts as one.
-constexpr const char* displaceable_sulfo =
+const std::string displaceable_sulfo =
     "[$(c:c-[$([OX2]),$([NX3;+0;!$([NX3](=O)=O)])]),"
     "$(c:c:c:c-[$([OX2]),$([NX3;+0;!$([NX3](=O)=O)])])]-S(=O)(=O)[OX2H,OX1-]";
 constexpr int most_nitro = 2;
@@ -79,22 +79,17 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
 
 namespace {
 
-bool has(const Molecule& molecule, const std::string& smarts, const std::string& where) {
-    return count_matches(molecule, *read_pattern(smarts, where)) > 0;
-}
-
-std::optional<Refusal> decline(const Tables& tables, const Molecule& molecule, const Pattern& nitro_group) {
-    const int groups = count_matches(molecule, nitro_group);
-    if (groups > most_nitro)
-        return Refusal{
-            "molecule",
-            fmt::format("{} nitro groups in one molecule: isotally declines more than two, whatever "
-                        "the purpose",
-                        groups)};
-    if (groups == 0)
-        return std::nullopt;
+std::optional<Refusal> decline(const Tables& tables, Workspace& workspace, const Molecule& molecule) {
+    const auto count = [&] { return count_matches(workspace, molecule, nitro, "nitro"); };
+    if (most_atoms_for(workspace, molecule, nitro, "nitro") > most_nitro)
+        if (const int groups = count(); groups > most_nitro)
+            return Refusal{"molecule",
+                           fmt::format("{} nitro groups in one molecule: isotally declines more than two, "
+                                       "whatever the purpose",
+                                       groups)};
     for (const auto& ban : tables.bans)
-        if (ban.id.starts_with("energetic-") && has(molecule, ban.smarts, "bans.csv:" + ban.id))
+        if (ban.id.starts_with("energetic-") && occurs(workspace, molecule, ban.smarts, ban.id) &&
+            count() > 0)
             return Refusal{"molecule",
                            fmt::format("nitro together with another energetic group ({}): isotally declines",
                                        ban.reason)};
@@ -104,18 +99,25 @@ std::optional<Refusal> decline(const Tables& tables, const Molecule& molecule, c
 }  // namespace
 
 std::optional<Refusal> decline_molecule(const Tables& tables, std::string_view smiles) {
-    return decline(tables, *read_molecule(smiles), *read_pattern(nitro, "nitro"));
+    return decline(tables, *new_workspace(), *read_molecule(smiles));
 }
 
-std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, const Conditions& conditions,
-                                      const std::vector<Site>& sites) {
+namespace {
+
+bool brings_nitro(Workspace& workspace, const Reaction& reaction) {
+    return occurs(workspace, *read_molecule(reaction.new_group, workspace), nitro, "nitro");
+}
+
+}  // namespace
+
+std::optional<Refusal> refuse_by_name(const Tables& tables, Workspace& workspace, const Arene& arene,
+                                      const Conditions& conditions, const std::vector<Site>& sites) {
     const auto& reaction = reaction_of(tables, conditions);
-    const auto nitro_group = read_pattern(nitro, "nitro");
-    if (auto declined = decline(tables, *arene.molecule, *nitro_group))
+    if (auto declined = decline(tables, workspace, *arene.molecule))
         return declined;
-    if (count_matches(*read_molecule(reaction.new_group), *nitro_group) > 0) {
-        const int nitro_groups = count_matches(*arene.molecule, *nitro_group);
-        const int sulfo_groups = count_matches(*arene.molecule, *read_pattern(displaceable_sulfo, "sulfo"));
+    if (brings_nitro(workspace, reaction)) {
+        const int nitro_groups = count_matches(workspace, *arene.molecule, nitro, "nitro");
+        const int sulfo_groups = count_matches(workspace, *arene.molecule, displaceable_sulfo, "sulfo");
         if (nitro_groups + sulfo_groups + 1 > most_nitro)
             return Refusal{
                 reaction.id,
@@ -128,16 +130,16 @@ std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, 
     for (const auto& ban : tables.bans) {
         if (ban.id.starts_with("energetic-") || !applies_to(ban.reactions, reaction))
             continue;
-        const std::string where = "bans.csv:" + ban.id;
-        if (!has(*arene.molecule, ban.smarts, where))
+        const std::string& where = ban.id;
+        if (!occurs(workspace, *arene.molecule, ban.smarts, where))
             continue;
-        if (!ban.unless.empty() && has(*arene.molecule, ban.unless, where))
+        if (!ban.unless.empty() && occurs(workspace, *arene.molecule, ban.unless, where))
             continue;
         return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {}", reaction.name,
                                                 ban.reason, ban.instead)};
     }
     for (const auto& site : sites)
-        if (auto declined = decline(tables, *site.molecule, *nitro_group))
+        if (auto declined = decline(tables, workspace, *site.molecule))
             return declined;
     return std::nullopt;
 }
@@ -174,28 +176,28 @@ std::optional<Refusal> refuse_below_floor(const Tables& tables, const Conditions
                                             too_slow(best, std::log10(*floor)), reaction.instead)};
 }
 
-std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene,
+std::vector<ProductCaution> cautions_for(const Tables& tables, Workspace& workspace, const Arene& arene,
                                          const Conditions& conditions, const std::vector<Site>& sites) {
     const auto& reaction = reaction_of(tables, conditions);
     std::vector<std::pair<int, ProductCaution>> found;
     for (const auto& caution : tables.cautions) {
         if (caution.severity == 0 || !applies_to(caution.reactions, reaction))
             continue;
-        const std::string where = "cautions.csv:" + caution.code;
-        if (!caution.substrate_smarts.empty() && !has(*arene.molecule, caution.substrate_smarts, where))
+        const std::string& where = caution.code;
+        if (!caution.substrate_smarts.empty() &&
+            !occurs(workspace, *arene.molecule, caution.substrate_smarts, where))
             continue;
-        ProductCaution said{caution.code, caution.text, {}};
+        std::vector<std::string> products;
         if (!caution.product_smarts.empty()) {
-            const auto pattern = read_pattern(caution.product_smarts, where);
             for (const auto& site : sites)
-                if (count_matches(*site.molecule, *pattern) > 0)
-                    said.products.push_back(site.product);
-            if (said.products.empty())
+                if (occurs(workspace, *site.molecule, caution.product_smarts, where))
+                    products.push_back(site.product);
+            if (products.empty())
                 continue;
-            if (said.products.size() == sites.size())
-                said.products.clear();
+            if (products.size() == sites.size())
+                products.clear();
         }
-        found.emplace_back(caution.severity, std::move(said));
+        found.emplace_back(caution.severity, ProductCaution{caution.code, caution.text, std::move(products)});
     }
     std::stable_sort(found.begin(), found.end(),
                      [](const auto& a, const auto& b) { return a.first > b.first; });
@@ -205,7 +207,7 @@ std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& aren
     return cautions;
 }
 
-std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene,
+std::vector<std::string> reaction_notes(const Knowledge& knowledge, Workspace& workspace, const Arene& arene,
                                         const Conditions& conditions, double relative_rate) {
     const auto& tables = knowledge.tables;
     const auto& reaction = reaction_of(tables, conditions);
@@ -227,7 +229,7 @@ std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene&
     for (const auto& note : tables.cautions)
         if (note.severity == 0 && applies_to(note.reactions, reaction) &&
             (note.substrate_smarts.empty() ||
-             has(*arene.molecule, note.substrate_smarts, "cautions.csv:" + note.code)))
+             occurs(workspace, *arene.molecule, note.substrate_smarts, note.code)))
             notes.push_back(note.text);
     if (const auto limit = figure(reaction, "encounter_limit"); limit && relative_rate > *limit)
         notes.push_back(fmt::format("the relative rate is that of the ring itself; in this medium encounter "

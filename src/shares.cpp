@@ -3,25 +3,33 @@
 #include <Eigen/Cholesky>
 #include <Eigen/Core>
 #include <algorithm>
-#include <boost/random/mersenne_twister.hpp>
 #include <boost/random/normal_distribution.hpp>
 #include <cmath>
-#include <numeric>
+#include <limits>
+#include <numbers>
+
+#include "shares/draw_kernel.hpp"
 
 namespace isotally {
 namespace {
 
-/// Lower factor of a covariance that may be singular (equal sites, no uncertainty left).
-Eigen::MatrixXd root_of(const std::vector<double>& covariance, std::size_t n) {
+constexpr double ln10 = std::numbers::ln10;
+
+/// Lower factor (row-major) of the covariance of ln F, which may be singular (equal sites, no uncertainty
+/// left).
+std::vector<double> root_of(const std::vector<double>& covariance, std::size_t n) {
+    using Square = Eigen::Matrix<double, Eigen::Dynamic, Eigen::Dynamic, Eigen::RowMajor>;
     const auto size = static_cast<Eigen::Index>(n);
     Eigen::MatrixXd matrix = Eigen::Map<const Eigen::MatrixXd>(covariance.data(), size, size);
     const double jitter = 1e-12 * std::max(1.0, matrix.diagonal().maxCoeff());
     matrix.diagonal().array() += jitter;
-    return matrix.llt().matrixL();
+    std::vector<double> root(n * n);
+    Eigen::Map<Square>(root.data(), size, size) = ln10 * Eigen::MatrixXd(matrix.llt().matrixL());
+    return root;
 }
 
-double quantile(std::vector<double>& values, double at) {
-    const double place = at * static_cast<double>(values.size() - 1);
+/// The value at a place between two order statistics.
+double at_place(std::vector<double>& values, double place) {
     const auto below = static_cast<std::size_t>(place);
     const auto middle = values.begin() + static_cast<std::ptrdiff_t>(below);
     std::nth_element(values.begin(), middle, values.end());
@@ -31,12 +39,51 @@ double quantile(std::vector<double>& values, double at) {
     return *middle + (place - static_cast<double>(below)) * (next - *middle);
 }
 
-Range range_of(double value, std::vector<double>& draws, double level) {
-    return {value, std::min(value, quantile(draws, (1 - level) / 2)),
-            std::max(value, quantile(draws, (1 + level) / 2))};
+/// Order statistics of draws: a sample brackets the place, only what lies between is put in order. The same
+/// values as ordering all of them, several times faster.
+class Ordered {
+public:
+    explicit Ordered(const std::vector<double>& values) : values_(values) {
+        const std::size_t step = std::max<std::size_t>(1, values.size() / sample_size);
+        for (std::size_t i = 0; i < values.size(); i += step)
+            sample_.push_back(values[i]);
+        std::sort(sample_.begin(), sample_.end());
+    }
+
+    double at(double share) {
+        const double place = share * static_cast<double>(values_.size() - 1);
+        const auto guess = static_cast<std::size_t>(share * static_cast<double>(sample_.size() - 1));
+        constexpr double far = std::numeric_limits<double>::infinity();
+        const double low = guess < margin ? -far : sample_[guess - margin];
+        const double high = guess + margin + 1 >= sample_.size() ? far : sample_[guess + margin + 1];
+        std::size_t below = 0, kept = 0;
+        near_.resize(values_.size());
+        for (const double value : values_) {  // without a branch that is hard to foresee
+            below += value < low ? 1u : 0u;
+            near_[kept] = value;
+            kept += value >= low && value <= high ? 1u : 0u;
+        }
+        near_.resize(kept);
+        const double place_in = place - static_cast<double>(below);
+        if (place_in >= 0 && place_in < static_cast<double>(near_.size()) - 1)
+            return at_place(near_, place_in);
+        near_ = values_;
+        return at_place(near_, place);
+    }
+
+private:
+    static constexpr std::size_t sample_size = 32, margin = 4;
+    const std::vector<double>& values_;
+    std::vector<double> sample_, near_;
+};
+
+Range range_of(double value, const std::vector<double>& draws, double level) {
+    Ordered ordered(draws);
+    return {value, std::min(value, ordered.at((1 - level) / 2)),
+            std::max(value, ordered.at((1 + level) / 2))};
 }
 
-/// The only group of a ring with exactly one, else -1.
+/// Whether the only ring carries exactly one group.
 bool single_group(const std::vector<PlacedSite>& sites) {
     for (const auto& site : sites)
         if (std::count(site.groups.begin(), site.groups.end(), -1) != 5 || site.tag >= 6)
@@ -74,52 +121,62 @@ std::vector<double> isomer_percents(const std::vector<PlacedSite>& sites,
     return percent;
 }
 
-ShareDraws draw_shares(const Tables& tables, std::string_view family, const std::vector<PlacedSite>& sites,
-                       const SiteFactors& factors, const Draws& draws) {
-    const std::size_t n = sites.size();
-    const double points = model_figure(tables, family, "laboratory_sd_points").value;
-    const double scatter = model_figure(tables, family, "laboratory_sd_log10").value;
-    const double most_scatter = model_figure(tables, family, "laboratory_sd_minor_log10").value;
-    const auto root = root_of(factors.covariance, n);
-    const auto count = static_cast<std::size_t>(draws.count);
-    std::vector<std::vector<double>> share(n, std::vector<double>(count));
-    std::vector<double> ratio(count), rate(count), drawn(n), percent(n);
-    boost::random::mt19937_64 random(draws.seed);
-    boost::random::normal_distribution<double> normal;
-    Eigen::VectorXd z(static_cast<Eigen::Index>(n));
-    for (std::size_t d = 0; d < count; ++d) {
-        for (auto& one : z)
+const double* Normals::column(std::size_t k) {
+    while (columns.size() <= k) {
+        boost::random::normal_distribution<double> normal;
+        std::vector<double> drawn(static_cast<std::size_t>(count));
+        for (auto& one : drawn)
             one = normal(random);
-        const Eigen::VectorXd moved = root * z;
-        double total = 0;
-        for (std::size_t i = 0; i < n; ++i) {
-            drawn[i] = factors.mean[i] + moved(static_cast<Eigen::Index>(i));
-            total += sites[i].multiplicity * std::pow(10.0, drawn[i]);
-        }
-        rate[d] = total / 6;
-        percent = isomer_percents(sites, drawn);
-        double seen = 0;
-        for (auto& p : percent) {
-            const double sd = std::min(most_scatter, std::hypot(points / (p * std::log(10.0)), scatter));
-            p *= std::pow(10.0, sd * normal(random));
-            seen += p;
-        }
-        for (std::size_t i = 0; i < n; ++i)
-            share[i][d] = percent[i] *= 100 / seen;
-        if (const auto r = ortho_over_para(sites, percent))
-            ratio[d] = *r;
+        columns.push_back(std::move(drawn));
     }
-    const auto at_mean = isomer_percents(sites, factors.mean);
-    ShareDraws out;
+    return columns[k].data();
+}
+
+ShareDraws draw_shares(const Tables& tables, std::string_view family, const std::vector<PlacedSite>& sites,
+                       const SiteFactors& factors, const Draws& draws, Normals& normals) {
+    static const auto kernel = shares::draw_kernels().front();
+    const std::size_t n = sites.size();
+    const auto value = [&](const char* quantity) { return model_figure(tables, family, quantity).value; };
+    const auto count = static_cast<std::size_t>(draws.count);
+    const auto root = root_of(factors.covariance, n);
+    std::vector<double> ln_factor(n), rate(count);
+    std::vector<std::vector<double>> share(n, std::vector<double>(count));
+    std::vector<double*> out(n);
+    for (std::size_t i = 0; i < n; ++i) {
+        ln_factor[i] = std::log(sites[i].multiplicity) + ln10 * factors.mean[i];
+        normals.column(2 * i + 1);
+        out[i] = share[i].data();
+    }
+    std::vector<const double*> model(n), laboratory(n);
     for (std::size_t i = 0; i < n; ++i)
-        out.percent.push_back(range_of(at_mean[i], share[i], draws.level));
-    if (const auto r = ortho_over_para(sites, at_mean))
-        out.ortho_para_ratio = range_of(*r, ratio, draws.level);
+        model[i] = normals.column(2 * i), laboratory[i] = normals.column(2 * i + 1);
+    kernel.run({n, count, ln_factor.data(), root.data(), model.data(), laboratory.data(),
+                value("laboratory_sd_points"), ln10 * value("laboratory_sd_log10"),
+                ln10 * value("laboratory_sd_minor_log10"), out.data(), rate.data()});
+    const auto at_mean = isomer_percents(sites, factors.mean);
+    ShareDraws drawn;
+    if (const auto ratio = ortho_over_para(sites, at_mean)) {
+        std::vector<double> ratios(count), percent(n);
+        for (std::size_t d = 0; d < count; ++d) {
+            for (std::size_t i = 0; i < n; ++i)
+                percent[i] = share[i][d];
+            ratios[d] = *ortho_over_para(sites, percent);
+        }
+        drawn.ortho_para_ratio = range_of(*ratio, ratios, draws.level);
+    }
+    for (std::size_t i = 0; i < n; ++i)
+        drawn.percent.push_back(range_of(at_mean[i], share[i], draws.level));
     double total = 0;
     for (std::size_t i = 0; i < n; ++i)
         total += sites[i].multiplicity * std::pow(10.0, factors.mean[i]);
-    out.relative_rate = range_of(total / 6, rate, draws.level);
-    return out;
+    drawn.relative_rate = range_of(total / 6, rate, draws.level);
+    return drawn;
+}
+
+ShareDraws draw_shares(const Tables& tables, std::string_view family, const std::vector<PlacedSite>& sites,
+                       const SiteFactors& factors, const Draws& draws) {
+    Normals normals(draws);
+    return draw_shares(tables, family, sites, factors, draws, normals);
 }
 
 MoleculeName name_molecule(const Tables& tables, const Arene& arene) {
@@ -159,15 +216,30 @@ int new_group_index(const Tables& tables, const Reaction& reaction) {
 
 }  // namespace
 
+StepWorker step_worker(const Knowledge& knowledge, std::shared_ptr<const FamilyModel> model,
+                       const Conditions& conditions, const Draws& draws) {
+    return {&knowledge,      conditions,    draws, under_conditions(std::move(model), conditions),
+            new_workspace(), Normals(draws)};
+}
+
 Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& model, const Arene& arene,
                                const Conditions& conditions, const Draws& draws) {
+    // the model outlives this call, so the pointer need not own it
+    auto worker = step_worker(knowledge, {std::shared_ptr<void>(), &model}, conditions, draws);
+    return answer_step(worker, arene);
+}
+
+Answer<StepAnswer> answer_step(StepWorker& worker, const Arene& arene) {
+    const auto& knowledge = *worker.knowledge;
+    const auto& conditions = worker.conditions;
+    auto& workspace = *worker.workspace;
     const auto& tables = knowledge.tables;
     const auto& reaction = tables.reactions[static_cast<std::size_t>(conditions.reaction)];
-    const auto found = sites(arene, reaction.new_group);
-    if (const auto refused = refuse_by_name(tables, arene, conditions, found))
+    const auto found = sites(arene, reaction.new_group, workspace);
+    if (const auto refused = refuse_by_name(tables, workspace, arene, conditions, found))
         return *refused;
     const auto placed = placed_sites(arene, found);
-    auto factors = site_factors(model, conditions, arene.smiles, placed, true);
+    auto factors = site_factors(*worker.model, arene.smiles, placed, true);
     if (const auto refused = refuse_below_floor(tables, conditions, factors.mean))
         return *refused;
 
@@ -177,15 +249,18 @@ Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& mo
     answer.name = name.name;
     answer.systematic_name = name.systematic;
     answer.conditions = conditions;
-    const auto drawn = draw_shares(tables, reaction.family, placed, factors, draws);
+    const auto drawn = draw_shares(tables, reaction.family, placed, factors, worker.draws, worker.normals);
     const int new_group = new_group_index(tables, reaction);
+    std::vector<std::array<int, 6>> locants;
+    for (const auto& ring : arene.rings)
+        locants.push_back(name_ring(tables, ring.groups).locants);
+    answer.shares.reserve(found.size());
     for (std::size_t i = 0; i < found.size(); ++i) {
         IsomerShare share;
         share.site = found[i];
-        const auto& ring = arene.rings[static_cast<std::size_t>(found[i].ring)];
-        const auto locants = name_ring(tables, ring.groups).locants;
         for (const int position : found[i].positions)
-            share.locants.push_back(locants[static_cast<std::size_t>(position)]);
+            share.locants.push_back(
+                locants[static_cast<std::size_t>(found[i].ring)][static_cast<std::size_t>(position)]);
         std::sort(share.locants.begin(), share.locants.end());
         name_product(knowledge, arene, new_group, share);
         share.percent = drawn.percent[i];
@@ -210,8 +285,8 @@ Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& mo
     for (std::size_t i = 0; i < found.size(); ++i)
         if (drawn.percent[i].value >= told)
             notable.push_back(found[i]);
-    answer.cautions = cautions_for(tables, arene, conditions, notable);
-    answer.notes = reaction_notes(knowledge, arene, conditions, drawn.relative_rate.value);
+    answer.cautions = cautions_for(tables, workspace, arene, conditions, notable);
+    answer.notes = reaction_notes(knowledge, workspace, arene, conditions, drawn.relative_rate.value);
     return answer;
 }
 

@@ -64,9 +64,7 @@ bool applies_to(const std::vector<std::string>& reactions, const Reaction& react
 
 const Figure& model_figure(const Tables& tables, std::string_view family, std::string_view quantity) {
     const Figure* general = nullptr;
-    std::vector<std::string> quantities;
     for (const ModelFigure& figure : tables.model) {
-        quantities.push_back(figure.quantity);
         if (figure.quantity != quantity)
             continue;
         if (figure.family == family)
@@ -76,6 +74,9 @@ const Figure& model_figure(const Tables& tables, std::string_view family, std::s
     }
     if (general)
         return *general;
+    std::vector<std::string> quantities;
+    for (const ModelFigure& figure : tables.model)
+        quantities.push_back(figure.quantity);
     throw Error(ErrorKind::tables, "model.csv",
                 "no row for the quantity " + in_quotes(quantity) + " of the family " + in_quotes(family) +
                     " or of all" + did_you_mean(quantity, quantities));

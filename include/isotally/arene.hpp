@@ -34,6 +34,10 @@ struct Ring {
 
 struct Molecule;  // the toolkit's molecule
 
+/// What one thread keeps between molecules: patterns compiled on first use, groups met before.
+struct Workspace;
+std::shared_ptr<Workspace> new_workspace();
+
 struct Arene {
     std::string smiles;              // canonical, as fed
     std::vector<Ring> rings;         // every benzene ring; order and start follow the canonical form
@@ -54,6 +58,8 @@ struct Site {
 /// refuses what has no benzene ring, fused or hetero rings, mixtures other than simple salts (Na, K,
 /// Cl, HSO4 are taken off with a note), isotopes, radicals, metals, and groups the tables don't know.
 Answer<Arene> parse_arene(const Tables& tables, const GroupIndex& index, std::string_view smiles);
+Answer<Arene> parse_arene(const Tables& tables, const GroupIndex& index, std::string_view smiles,
+                          Workspace& workspace);
 
 /// The same from a molfile (V2000 or V3000).
 Answer<Arene> parse_molfile(const Tables& tables, const GroupIndex& index, std::string_view text);
@@ -65,7 +71,8 @@ std::string ring_smiles(const Tables& tables, const RingGroups& groups);
 std::string canonical_smiles(std::string_view smiles, const std::string& where);
 
 /// The free positions, grouped by product, for a new group ("*[N+](=O)[O-]").
-std::vector<Site> sites(const Arene& arene, std::string_view new_group);
+std::vector<Site> sites(const Arene& arene, const std::string& new_group);
+std::vector<Site> sites(const Arene& arene, const std::string& new_group, Workspace& workspace);
 
 struct Pattern;  // the toolkit's query
 
@@ -75,7 +82,21 @@ std::shared_ptr<const Pattern> read_pattern(const std::string& smarts, const std
 /// The toolkit's molecule of a SMILES; throws as parse_arene does, refuses nothing.
 std::shared_ptr<const Molecule> read_molecule(std::string_view smiles);
 
-/// How often a pattern occurs in a molecule.
-int count_matches(const Molecule& molecule, const Pattern& pattern);
+/// The same for a text that comes again and again: read once.
+std::shared_ptr<const Molecule> read_molecule(const std::string& smiles, Workspace& workspace);
+
+/// Whether, and how often, a pattern (SMARTS; read_pattern's errors) occurs in a molecule.
+bool occurs(Workspace& workspace, const Molecule& molecule, const std::string& smarts,
+            std::string_view where);
+int count_matches(Workspace& workspace, const Molecule& molecule, const std::string& smarts,
+                  std::string_view where);
+
+/// At most so many atoms can be the only one of a pattern of one atom.
+int most_atoms_for(Workspace& workspace, const Molecule& molecule, const std::string& smarts,
+                   std::string_view where);
+
+/// The quick look that comes before: false only where the atoms for the pattern are not there.
+bool may_occur(Workspace& workspace, const Molecule& molecule, const std::string& smarts,
+               std::string_view where);
 
 }  // namespace isotally

@@ -21,8 +21,8 @@ Answer<Conditions> choose_conditions(const Tables& tables, int reaction, std::op
 std::optional<Refusal> decline_molecule(const Tables& tables, std::string_view smiles);
 
 /// Named bans, and products that would be declined.
-std::optional<Refusal> refuse_by_name(const Tables& tables, const Arene& arene, const Conditions& conditions,
-                                      const std::vector<Site>& sites);
+std::optional<Refusal> refuse_by_name(const Tables& tables, Workspace& workspace, const Arene& arene,
+                                      const Conditions& conditions, const std::vector<Site>& sites);
 
 /// The floor: refused where the best position of every ring lies below it (log10 F in the state of the
 /// groups).
@@ -35,12 +35,12 @@ struct ProductCaution {
 };
 
 /// Cautions of a step, the worst first; the standing one last. `sites`: the products worth a caution.
-std::vector<ProductCaution> cautions_for(const Tables& tables, const Arene& arene,
+std::vector<ProductCaution> cautions_for(const Tables& tables, Workspace& workspace, const Arene& arene,
                                          const Conditions& conditions, const std::vector<Site>& sites);
 
 /// What must be said with the figures: reversible, two forms of a group react, slower than the acid reaches
 /// ...
-std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Arene& arene,
+std::vector<std::string> reaction_notes(const Knowledge& knowledge, Workspace& workspace, const Arene& arene,
                                         const Conditions& conditions, double relative_rate);
 
 }  // namespace isotally

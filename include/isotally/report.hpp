@@ -12,6 +12,10 @@ namespace isotally {
 /// One JSON document, format isotally.step.1 (contract of the fields: README). `indent` -1: one line.
 std::string step_json(const Tables& tables, const StepAnswer& answer, const Draws& draws, int indent);
 
+/// The same on one line, with what stood beside the molecule in a list as `label` (if anything did).
+void append_step_json(const Tables& tables, const StepAnswer& answer, const Draws& draws,
+                      const std::string& label, std::string& out);
+
 /// One line an isomer: ring, locants, product, name, percent with interval, log10 factor with sd, evidence.
 std::string step_csv(const StepAnswer& answer);
 
@@ -34,6 +38,6 @@ std::string check_svg(const std::vector<CheckSet>& sets);
 /// A failure or refusal, format isotally.error.1. `kind` is refused, usage, input, tables, output,
 /// interrupted or defect.
 std::string error_json(int exit_status, const std::string& kind, const std::string& where,
-                       const std::string& message);
+                       const std::string& message, const std::string& label = {});
 
 }  // namespace isotally

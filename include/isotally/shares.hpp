@@ -2,7 +2,9 @@
 #pragma once
 
 #include <cstdint>
+#include <memory>
 #include <optional>
+#include <random>
 #include <string>
 #include <vector>
 
@@ -50,7 +52,17 @@ struct StepAnswer {
 std::vector<double> isomer_percents(const std::vector<PlacedSite>& sites,
                                     const std::vector<double>& log10_factors);
 
-/// Intervals of shares by draws of the posterior and of a laboratory's scatter. Columns of `wanted` sums.
+/// Standard normals by column, `draws.count` each, made on first use: the same for every molecule.
+struct Normals {
+    int count;
+    std::mt19937_64 random;
+    std::vector<std::vector<double>> columns;
+
+    explicit Normals(const Draws& draws) : count(draws.count), random(draws.seed) {}
+    const double* column(std::size_t k);
+};
+
+/// Intervals of shares by draws of the posterior and of a laboratory's scatter.
 struct ShareDraws {
     std::vector<Range> percent;
     std::optional<Range> ortho_para_ratio;
@@ -58,7 +70,23 @@ struct ShareDraws {
 };
 
 ShareDraws draw_shares(const Tables& tables, std::string_view family, const std::vector<PlacedSite>& sites,
+                       const SiteFactors& factors, const Draws& draws, Normals& normals);
+ShareDraws draw_shares(const Tables& tables, std::string_view family, const std::vector<PlacedSite>& sites,
                        const SiteFactors& factors, const Draws& draws);
+
+/// One question put to many molecules: keeps what does not depend on the molecule. One for each thread; the
+/// answers are those of answer_step below, byte for byte.
+struct StepWorker {
+    const Knowledge* knowledge;
+    Conditions conditions;
+    Draws draws;
+    std::shared_ptr<SiteModel> model;
+    std::shared_ptr<Workspace> workspace;
+    Normals normals;
+};
+StepWorker step_worker(const Knowledge& knowledge, std::shared_ptr<const FamilyModel> model,
+                       const Conditions& conditions, const Draws& draws);
+Answer<StepAnswer> answer_step(StepWorker& worker, const Arene& arene);
 
 /// One step: refuses what does not go. The model is that of the reaction's family.
 Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& model, const Arene& arene,

@@ -58,8 +58,8 @@ bool is_inner_salt(const RDKit::RWMol& mol) {
 
 Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit::RWMol> mol,
                                                            std::vector<std::string>& notes) {
-    const auto parts = RDKit::MolOps::getMolFrags(*mol, false);
-    if (parts.size() == 1) {
+    std::vector<int> fragment_of_atom;
+    if (RDKit::MolOps::getMolFrags(*mol, fragment_of_atom) == 1) {
         if (is_inner_salt(*mol)) {
             neutralise(*mol);
             notes.push_back("an inner salt, taken in its uncharged form");
@@ -67,7 +67,7 @@ Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit
         return mol;
     }
     std::unique_ptr<RDKit::RWMol> kept;
-    for (const auto& part : parts) {
+    for (const auto& part : RDKit::MolOps::getMolFrags(*mol, false)) {
         const std::string smiles = RDKit::MolToSmiles(*part);
         const auto ion = counter_ions().find(smiles);
         if (ion != counter_ions().end()) {

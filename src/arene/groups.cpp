@@ -1,6 +1,5 @@
 #include <GraphMol/SmilesParse/SmilesParse.h>
 #include <GraphMol/SmilesParse/SmilesWrite.h>
-#include <GraphMol/Substruct/SubstructMatch.h>
 #include <fmt/format.h>
 
 #include <algorithm>
@@ -43,6 +42,32 @@ std::string group_key(const RDKit::ROMol& mol, unsigned ring_atom, unsigned firs
             symbol = RDKit::SmilesWrite::GetAtomSmiles(atom, false, nullptr, false, false);
     }
     return RDKit::MolFragmentToSmiles(mol, atoms, nullptr, &symbols, nullptr, false);
+}
+
+std::string written_group(const RDKit::ROMol& mol, unsigned ring_atom, unsigned first) {
+    std::string text;
+    const auto put = [&](unsigned number) { text += static_cast<char>(number); };
+    std::vector<unsigned> order{ring_atom, first};  // in the order in which they are met
+    for (std::size_t i = 1; i < order.size(); ++i) {
+        const auto* atom = mol.getAtomWithIdx(order[i]);
+        put(static_cast<unsigned>(atom->getAtomicNum()));
+        put(atom->getTotalNumHs());
+        put(static_cast<unsigned>(atom->getFormalCharge() + 8));
+        put(static_cast<unsigned>(atom->getChiralTag()));
+        for (const auto* bond : mol.atomBonds(atom)) {
+            const unsigned other = bond->getOtherAtomIdx(order[i]);
+            auto at = std::find(order.begin(), order.end(), other);
+            if (at == order.end())
+                at = order.insert(at, other);
+            put(static_cast<unsigned>(bond->getBondType()));
+            put(static_cast<unsigned>(bond->getStereo()));
+            const auto place = static_cast<unsigned>(at - order.begin());
+            put(place & 0xff);
+            put(place >> 8);
+        }
+        put(0xff);
+    }
+    return text;
 }
 
 }  // namespace toolkit
@@ -96,23 +121,8 @@ std::string canonical_smiles(std::string_view smiles, const std::string& where) 
     }
 }
 
-std::shared_ptr<const Pattern> read_pattern(const std::string& smarts, const std::string& where) {
-    std::unique_ptr<RDKit::RWMol> query;
-    try {
-        query.reset(RDKit::SmartsToMol(smarts));
-    } catch (const std::exception&) {
-    }
-    if (!query)
-        throw Error(ErrorKind::tables, where, "the pattern can't be read: " + smarts);
-    return std::make_shared<const Pattern>(Pattern{std::move(*query)});
-}
-
 std::shared_ptr<const Molecule> read_molecule(std::string_view smiles) {
-    return std::make_shared<const Molecule>(Molecule{RDKit::ROMol(*toolkit::read_smiles(smiles))});
-}
-
-int count_matches(const Molecule& molecule, const Pattern& pattern) {
-    return static_cast<int>(RDKit::SubstructMatch(molecule.mol, pattern.query).size());
+    return std::make_shared<const Molecule>(Molecule{std::move(*toolkit::read_smiles(smiles)), {}});
 }
 
 }  // namespace isotally

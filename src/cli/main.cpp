@@ -8,6 +8,7 @@
 #include <sstream>
 
 #include "check_command.hpp"
+#include "interrupt.hpp"
 #include "isotally/built_in.hpp"
 #include "isotally/error.hpp"
 #include "status.hpp"
@@ -79,11 +80,19 @@ void add_step(CLI::App& program, Options& options) {
         ->capture_default_str()
         ->type_name("P");
     step->add_option("--draws", request.draws.count, "Draws behind the intervals")
-        ->check(CLI::Range(10, 1000000))
+        ->check(CLI::Range(10, 100000))
         ->capture_default_str()
         ->type_name("N");
     step->add_option("--seed", request.draws.seed, "Seed of the draws")
         ->check(whole_number)
+        ->capture_default_str()
+        ->type_name("N");
+    step->add_option("--skip", request.skip, "Lines of a list already answered: go on after them")
+        ->check(whole_number)
+        ->type_name("N");
+    step->add_option("--threads", request.threads, "Threads for a list; 0: one for each processor")
+        ->check(whole_number)
+        ->check(CLI::Range(0, 1024))
         ->capture_default_str()
         ->type_name("N");
     auto* json = step->add_flag("--json", request.json, "One JSON document on standard output");
@@ -120,7 +129,7 @@ void add_check(CLI::App& program, Options& options) {
         ->type_name("SET");
     check->add_flag("--all", request.all, "Every family");
     check->add_option("--draws", request.draws.count, "Draws behind the intervals")
-        ->check(CLI::Range(10, 1000000))
+        ->check(CLI::Range(10, 100000))
         ->capture_default_str()
         ->type_name("N");
     check->add_option("--seed", request.draws.seed, "Seed of the draws")
@@ -188,6 +197,8 @@ int run(int argc, char** argv, std::ostream& out) {
     } catch (const CLI::ParseError& e) {
         throw usage_error(e, program, argc, argv);
     }
+    options.step.quiet = options.quiet;
+    cli::note_interrupts();
     if (program.got_subcommand("step"))
         return cli::step_command(options.step, load(options), std::cin, out, std::cerr);
     if (program.got_subcommand("check"))

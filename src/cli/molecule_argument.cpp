@@ -48,6 +48,15 @@ std::string smiles_of_name(const Knowledge& knowledge, const std::string& text) 
     return {};
 }
 
+/// A carbon with the number of a ring closure: every SMILES of a benzene has one, no name does.
+bool is_plainly_smiles(std::string_view text) {
+    for (std::size_t i = 1; i < text.size(); ++i)
+        if ((text[i - 1] == 'c' || text[i - 1] == 'C') &&
+            (text[i] == '%' || (text[i] >= '0' && text[i] <= '9')))
+            return true;
+    return false;
+}
+
 /// Does it look like a misspelt name rather than a SMILES? Names have letters no SMILES of a benzene needs.
 std::string name_hint(const Tables& tables, const std::string& text) {
     std::vector<std::string> names;
@@ -60,16 +69,21 @@ std::string name_hint(const Tables& tables, const std::string& text) {
 }  // namespace
 
 Answer<Arene> read_molecule(const Knowledge& knowledge, const std::string& text) {
+    if (text.ends_with(".mol") && text.size() <= longest_argument)
+        return from_molfile(knowledge, text);
+    return read_listed_molecule(knowledge, text, *new_workspace());
+}
+
+Answer<Arene> read_listed_molecule(const Knowledge& knowledge, const std::string& text,
+                                   Workspace& workspace) {
     if (text.size() > longest_argument)
         throw Error(ErrorKind::input, "molecule",
                     fmt::format("{} characters, at most {} are read", text.size(), longest_argument));
-    if (text.ends_with(".mol"))
-        return from_molfile(knowledge, text);
-    const std::string known = smiles_of_name(knowledge, text);
-    if (!known.empty())
-        return parse_arene(knowledge.tables, knowledge.groups, known);
+    if (!is_plainly_smiles(text))
+        if (const auto known = smiles_of_name(knowledge, text); !known.empty())
+            return parse_arene(knowledge.tables, knowledge.groups, known, workspace);
     try {
-        return parse_arene(knowledge.tables, knowledge.groups, text);
+        return parse_arene(knowledge.tables, knowledge.groups, text, workspace);
     } catch (const Error& e) {
         throw Error(e.kind, e.where,
                     fmt::format("\"{}\" is neither a known name nor a SMILES: {}{}",

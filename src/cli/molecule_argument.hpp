@@ -11,6 +11,9 @@ namespace isotally::cli {
 /// Throws Error{input} for what can't be read.
 Answer<Arene> read_molecule(const Knowledge& knowledge, const std::string& text);
 
+/// The same of a line in a list, where no path is meant.
+Answer<Arene> read_listed_molecule(const Knowledge& knowledge, const std::string& text, Workspace& workspace);
+
 /// The index of a reaction id; throws Error{usage} naming the nearest one.
 int read_reaction(const Tables& tables, const std::string& id);
 

@@ -2,14 +2,12 @@
 
 #include <fmt/format.h>
 
-#include <istream>
-#include <map>
-#include <memory>
 #include <ostream>
 
 #include "isotally/report.hpp"
 #include "molecule_argument.hpp"
 #include "status.hpp"
+#include "step_list.hpp"
 
 namespace isotally::cli {
 namespace {
@@ -24,30 +22,20 @@ std::string assumed_text(const StepRequest& request, const Reaction& reaction) {
     return request.temperature_C ? "acid strength by default" : "temperature by default";
 }
 
-using Models = std::map<std::string, std::shared_ptr<const FamilyModel>>;
-
-const FamilyModel& model_of(const Knowledge& knowledge, Models& models, const std::string& family) {
-    auto& model = models[family];
-    if (!model)
-        model = fit_family(knowledge, family);
-    return *model;
-}
-
-Answer<StepAnswer> answer(const StepRequest& request, const Knowledge& knowledge, Models& models,
-                          int reaction, const Arene& arene) {
+Answer<StepAnswer> answer(const StepRequest& request, const Knowledge& knowledge, int reaction,
+                          const Arene& arene) {
     const auto chosen =
         choose_conditions(knowledge.tables, reaction, request.temperature_C, request.acid_percent);
     if (const auto* refused = refusal(chosen))
         return *refused;
     const auto& family = knowledge.tables.reactions[static_cast<std::size_t>(reaction)].family;
-    return answer_step(knowledge, model_of(knowledge, models, family), arene, std::get<Conditions>(chosen),
-                       request.draws);
+    const auto model = fit_family(knowledge, family);
+    return answer_step(knowledge, *model, arene, std::get<Conditions>(chosen), request.draws);
 }
 
 /// The reactions that go on this ring, one line each; wrong use all the same, as no reaction was named.
 int list_reactions(const StepRequest& request, const Knowledge& knowledge, const Arene& arene,
                    std::ostream& out, std::ostream& err) {
-    Models models;
     StepRequest quick = request;
     quick.draws.count = 1;
     quick.temperature_C.reset();
@@ -55,7 +43,7 @@ int list_reactions(const StepRequest& request, const Knowledge& knowledge, const
     std::string lines, ids;
     for (std::size_t i = 0; i < knowledge.tables.reactions.size(); ++i) {
         const auto& reaction = knowledge.tables.reactions[i];
-        const auto step = answer(quick, knowledge, models, static_cast<int>(i), arene);
+        const auto step = answer(quick, knowledge, static_cast<int>(i), arene);
         if (const auto* found = std::get_if<StepAnswer>(&step)) {
             const auto& lead = found->shares.front();
             lines += fmt::format("  {:<34}{:3.0f} % {}\n", reaction.id, lead.percent.value,
@@ -69,47 +57,6 @@ int list_reactions(const StepRequest& request, const Knowledge& knowledge, const
     const int status = fail(error, request.json, out, err);
     err << lines;
     return status;
-}
-
-/// One line of a list: SMILES, optionally a blank and a name. A failure is an answer of its own, and a
-/// sentence with the number of the line to `err`.
-std::string answer_line(const StepRequest& request, const Knowledge& knowledge, Models& models, int reaction,
-                        const std::string& line, std::size_t number, std::ostream& err) {
-    const auto failed = [&](int status, const std::string& kind, const std::string& where,
-                            const std::string& message) {
-        err << "isotally: line " << number << ": " << message << '\n';
-        return error_json(status, kind, fmt::format("line {}, {}", number, where), message);
-    };
-    try {
-        const auto arene = read_molecule(knowledge, line.substr(0, line.find_first_of(" \t")));
-        if (const auto* refused = refusal(arene))
-            return failed(1, "refused", refused->where, refused->reason);
-        const auto step = answer(request, knowledge, models, reaction, std::get<Arene>(arene));
-        if (const auto* refused = refusal(step))
-            return failed(1, "refused", refused->where, refused->reason);
-        return step_json(knowledge.tables, std::get<StepAnswer>(step), request.draws, -1);
-    } catch (const Error& e) {
-        return failed(static_cast<int>(status_of(e.kind)), kind_name(e.kind), e.where, e.what());
-    } catch (const std::exception& e) {
-        return failed(static_cast<int>(Status::defect), "defect", "isotally", e.what());
-    }
-}
-
-int answer_list(const StepRequest& request, const Knowledge& knowledge, int reaction, std::istream& in,
-                std::ostream& out, std::ostream& err) {
-    constexpr std::string_view byte_order_mark = "\xef\xbb\xbf";
-    Models models;
-    std::string line;
-    for (std::size_t number = 1; std::getline(in, line); ++number) {
-        if (number == 1 && line.starts_with(byte_order_mark))
-            line.erase(0, byte_order_mark.size());
-        if (!line.empty() && line.back() == '\r')
-            line.pop_back();
-        if (line.find_first_not_of(" \t") == std::string::npos)
-            continue;
-        out << answer_line(request, knowledge, models, reaction, line, number, err) << '\n';
-    }
-    return 0;
 }
 
 }  // namespace
@@ -127,8 +74,10 @@ int step_command(const StepRequest& request, const Knowledge& knowledge, std::is
             choose_conditions(tables, reaction, request.temperature_C, request.acid_percent);
         if (const auto* refused = refusal(conditions))
             return refuse(*refused, true, out, err);
-        return answer_list(request, knowledge, reaction, in, out, err);
+        return step_list(request, knowledge, std::get<Conditions>(conditions), in, out, err);
     }
+    if (request.skip > 0)
+        throw Error(ErrorKind::usage, "option --skip", "only a list (MOLECULE -) has lines to skip");
     const auto arene = read_molecule(knowledge, request.molecule);
     if (const auto* refused = refusal(arene))
         return refuse(*refused, request.json, out, err);
@@ -136,8 +85,7 @@ int step_command(const StepRequest& request, const Knowledge& knowledge, std::is
         return refuse(*declined, request.json, out, err);
     if (reaction < 0)
         return list_reactions(request, knowledge, std::get<Arene>(arene), out, err);
-    Models models;
-    const auto step = answer(request, knowledge, models, reaction, std::get<Arene>(arene));
+    const auto step = answer(request, knowledge, reaction, std::get<Arene>(arene));
     if (const auto* refused = refusal(step))
         return refuse(*refused, request.json, out, err);
     const auto& found = std::get<StepAnswer>(step);

@@ -1,6 +1,7 @@
 // isotally step: one substitution, or a list of them.
 #pragma once
 
+#include <cstddef>
 #include <iosfwd>
 #include <optional>
 #include <string>
@@ -15,7 +16,10 @@ struct StepRequest {
     std::string reaction;  // empty: list the reactions that go
     std::optional<double> temperature_C, acid_percent;
     Draws draws;
-    bool json = false, csv = false;
+    bool json = false, csv = false, quiet = false;
+    // of lists: lines already answered, threads (0: one for each processor)
+    std::size_t skip = 0;
+    unsigned threads = 0;
 };
 
 /// Exit status; the answer goes to `out`, all else to `err`. Throws Error.

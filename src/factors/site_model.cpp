@@ -56,6 +56,7 @@ struct SiteModel {
     std::unordered_map<int, Part> groups;                // by group in its state * 3 + relation
     std::map<std::pair<int, double>, Part> corrections;  // by which, how often
     std::map<Unknown, int> numbers;                      // dense number of an unknown
+    std::vector<Unknown> unknowns;                       // by number
     std::vector<double> variances;                       // prior variance by number
     std::vector<double> weights;                         // scratch: number * sites + site
 
@@ -66,7 +67,9 @@ struct SiteModel {
         for (const auto& term : form) {
             const auto [at, fresh] = numbers.try_emplace(term.unknown, static_cast<int>(variances.size()));
             if (fresh)
-                variances.push_back(std::pow(factors::prior_of(family->fit->settings, term.unknown).sd, 2));
+                unknowns.push_back(term.unknown),
+                    variances.push_back(
+                        std::pow(factors::prior_of(family->fit->settings, term.unknown).sd, 2));
             part.terms.emplace_back(at->second, term.weight);
         }
         return part;
@@ -126,7 +129,10 @@ struct Sums {
     }
 
     SiteFactors finish() {
-        std::sort(touched.begin(), touched.end());
+        // numbers follow the molecules seen before; sums must not
+        std::sort(touched.begin(), touched.end(), [&](int a, int b) {
+            return model.unknowns[static_cast<std::size_t>(a)] < model.unknowns[static_cast<std::size_t>(b)];
+        });
         touched.erase(std::unique(touched.begin(), touched.end()), touched.end());
         for (const int number : touched) {
             const double variance = model.variances[static_cast<std::size_t>(number)];

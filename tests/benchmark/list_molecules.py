@@ -13,7 +13,7 @@ from pathlib import Path
 
 TABLES = Path(__file__).resolve().parents[2] / "tables"
 GROUPS = """Me Et Pr iPr Bu tBu F Cl Br I OMe OEt OPr OPh OAc NHAc NHCOPh CF3 OCF3 SMe SO2Me SO2NH2 CO2H CO2Me CO2Et
-CONH2 CN CHO COMe COPh CH2Cl CHCl2 CCl3 CH2CN CH2CO2Et OCHF2 SO2Ph COEt cPr cHex OBu""".split()
+CONH2 CN CHO COMe COPh CH2Cl CHCl2 CCl3 CH2CN CH2CO2Et OCHF2 SO2Ph COEt cPr cHex OBu sBu iBu NHMe NMe2""".split()
 PLACES = [(0,), (0, 1), (0, 2), (0, 3), (0, 1, 2), (0, 1, 3), (0, 2, 4), (0, 1, 4)]
 
 
