@@ -3,7 +3,8 @@
 #include <Eigen/Cholesky>
 #include <Eigen/Core>
 #include <algorithm>
-#include <boost/random/normal_distribution.hpp>
+#include <boost/math/special_functions/erf.hpp>
+#include <boost/random/uniform_int_distribution.hpp>
 #include <cmath>
 #include <limits>
 #include <numbers>
@@ -122,12 +123,19 @@ std::vector<double> isomer_percents(const std::vector<PlacedSite>& sites,
 }
 
 const double* Normals::column(std::size_t k) {
+    const auto n = static_cast<std::size_t>(count);
+    if (in_order.empty())
+        for (std::size_t i = 0; i < n; ++i)
+            in_order.push_back(
+                -std::numbers::sqrt2 *
+                boost::math::erfc_inv((2.0 * static_cast<double>(i) + 1) / static_cast<double>(n)));
     while (columns.size() <= k) {
-        boost::random::normal_distribution<double> normal;
-        std::vector<double> drawn(static_cast<std::size_t>(count));
-        for (auto& one : drawn)
-            one = normal(random);
-        columns.push_back(std::move(drawn));
+        columns.push_back(in_order);
+        auto& column = columns.back();
+        for (std::size_t left = n; left > 1; --left) {
+            boost::random::uniform_int_distribution<std::size_t> pick(0, left - 1);
+            std::swap(column[left - 1], column[pick(random)]);
+        }
     }
     return columns[k].data();
 }

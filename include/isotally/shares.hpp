@@ -52,10 +52,13 @@ struct StepAnswer {
 std::vector<double> isomer_percents(const std::vector<PlacedSite>& sites,
                                     const std::vector<double>& log10_factors);
 
-/// Standard normals by column, `draws.count` each, made on first use: the same for every molecule.
+/// Standard normals by column, `draws.count` each, made on first use: the same for every molecule. Each
+/// column holds the quantiles at the middle of `count` equal parts, in random order (a Latin hypercube), so
+/// that a thousand draws give the ends of an interval as well as many thousand independent ones.
 struct Normals {
     int count;
     std::mt19937_64 random;
+    std::vector<double> in_order;
     std::vector<std::vector<double>> columns;
 
     explicit Normals(const Draws& draws) : count(draws.count), random(draws.seed) {}

@@ -18,7 +18,8 @@ endif()
 
 function(isotally_sanitize target)
   if(ISOTALLY_SANITIZE)
-    set(flags -fsanitize=address,undefined -fno-sanitize-recover=all -fno-omit-frame-pointer)
+    set(flags -fsanitize=address,undefined -fno-sanitize-recover=all -fno-omit-frame-pointer
+              $<$<BOOL:${ISOTALLY_FUZZ}>:-fsanitize=fuzzer-no-link>)
     target_compile_options(${target} PRIVATE $<$<COMPILE_LANGUAGE:CXX>:${flags}>)
     target_link_options(${target} PRIVATE ${flags})
   endif()
