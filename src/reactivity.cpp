@@ -79,7 +79,20 @@ Answer<Conditions> choose_conditions(const Tables& tables, int index, std::optio
 
 namespace {
 
-std::optional<Refusal> decline(const Tables& tables, Workspace& workspace, const Molecule& molecule) {
+bool is_energetic(const Ban& ban) {
+    return ban.id.starts_with("energetic-");
+}
+
+std::vector<const Ban*> energetic_bans(const Tables& tables) {
+    std::vector<const Ban*> found;
+    for (const auto& ban : tables.bans)
+        if (is_energetic(ban))
+            found.push_back(&ban);
+    return found;
+}
+
+std::optional<Refusal> decline(const std::vector<const Ban*>& energetic, Workspace& workspace,
+                               const Molecule& molecule) {
     const auto count = [&] { return count_matches(workspace, molecule, nitro, "nitro"); };
     if (most_atoms_for(workspace, molecule, nitro, "nitro") > most_nitro)
         if (const int groups = count(); groups > most_nitro)
@@ -87,19 +100,32 @@ std::optional<Refusal> decline(const Tables& tables, Workspace& workspace, const
                            fmt::format("{} nitro groups in one molecule: isotally declines more than two, "
                                        "whatever the purpose",
                                        groups)};
-    for (const auto& ban : tables.bans)
-        if (ban.id.starts_with("energetic-") && occurs(workspace, molecule, ban.smarts, ban.id) &&
-            count() > 0)
+    for (const auto* ban : energetic)
+        if (occurs(workspace, molecule, ban->smarts, ban->id) && count() > 0)
             return Refusal{"molecule",
                            fmt::format("nitro together with another energetic group ({}): isotally declines",
-                                       ban.reason)};
+                                       ban->reason)};
     return std::nullopt;
 }
 
 }  // namespace
 
+Rules rules_for(const Tables& tables, int index) {
+    Rules rules;
+    const auto& reaction = tables.reactions[static_cast<std::size_t>(index)];
+    rules.reaction = &reaction;
+    rules.energetic = energetic_bans(tables);
+    for (const auto& ban : tables.bans)
+        if (!is_energetic(ban) && applies_to(ban.reactions, reaction))
+            rules.bans.push_back(&ban);
+    for (const auto& caution : tables.cautions)
+        if (applies_to(caution.reactions, reaction))
+            (caution.severity == 0 ? rules.notes : rules.cautions).push_back(&caution);
+    return rules;
+}
+
 std::optional<Refusal> decline_molecule(const Tables& tables, std::string_view smiles) {
-    return decline(tables, *new_workspace(), *read_molecule(smiles));
+    return decline(energetic_bans(tables), *new_workspace(), *read_molecule(smiles));
 }
 
 namespace {
@@ -110,10 +136,10 @@ bool brings_nitro(Workspace& workspace, const Reaction& reaction) {
 
 }  // namespace
 
-std::optional<Refusal> refuse_by_name(const Tables& tables, Workspace& workspace, const Arene& arene,
-                                      const Conditions& conditions, const std::vector<Site>& sites) {
-    const auto& reaction = reaction_of(tables, conditions);
-    if (auto declined = decline(tables, workspace, *arene.molecule))
+std::optional<Refusal> refuse_by_name(const Rules& rules, Workspace& workspace, const Arene& arene,
+                                      const std::vector<Site>& sites) {
+    const auto& reaction = *rules.reaction;
+    if (auto declined = decline(rules.energetic, workspace, *arene.molecule))
         return declined;
     if (brings_nitro(workspace, reaction)) {
         const int nitro_groups = count_matches(workspace, *arene.molecule, nitro, "nitro");
@@ -127,19 +153,16 @@ std::optional<Refusal> refuse_by_name(const Tables& tables, Workspace& workspace
                         ? " (a sulfo group on a phenol, ether or aniline is displaced and counts as one)"
                         : "")};
     }
-    for (const auto& ban : tables.bans) {
-        if (ban.id.starts_with("energetic-") || !applies_to(ban.reactions, reaction))
+    for (const auto* ban : rules.bans) {
+        if (!occurs(workspace, *arene.molecule, ban->smarts, ban->id))
             continue;
-        const std::string& where = ban.id;
-        if (!occurs(workspace, *arene.molecule, ban.smarts, where))
-            continue;
-        if (!ban.unless.empty() && occurs(workspace, *arene.molecule, ban.unless, where))
+        if (!ban->unless.empty() && occurs(workspace, *arene.molecule, ban->unless, ban->id))
             continue;
         return Refusal{reaction.id, fmt::format("{} does not go here: {}; people {}", reaction.name,
-                                                ban.reason, ban.instead)};
+                                                ban->reason, ban->instead)};
     }
     for (const auto& site : sites)
-        if (auto declined = decline(tables, workspace, *site.molecule))
+        if (auto declined = decline(rules.energetic, workspace, *site.molecule))
             return declined;
     return std::nullopt;
 }
@@ -176,13 +199,11 @@ std::optional<Refusal> refuse_below_floor(const Tables& tables, const Conditions
                                             too_slow(best, std::log10(*floor)), reaction.instead)};
 }
 
-std::vector<ProductCaution> cautions_for(const Tables& tables, Workspace& workspace, const Arene& arene,
-                                         const Conditions& conditions, const std::vector<Site>& sites) {
-    const auto& reaction = reaction_of(tables, conditions);
+std::vector<ProductCaution> cautions_for(const Rules& rules, Workspace& workspace, const Arene& arene,
+                                         const std::vector<Site>& sites) {
     std::vector<std::pair<int, ProductCaution>> found;
-    for (const auto& caution : tables.cautions) {
-        if (caution.severity == 0 || !applies_to(caution.reactions, reaction))
-            continue;
+    for (const auto* row : rules.cautions) {
+        const auto& caution = *row;
         const std::string& where = caution.code;
         if (!caution.substrate_smarts.empty() &&
             !occurs(workspace, *arene.molecule, caution.substrate_smarts, where))
@@ -207,8 +228,9 @@ std::vector<ProductCaution> cautions_for(const Tables& tables, Workspace& worksp
     return cautions;
 }
 
-std::vector<std::string> reaction_notes(const Knowledge& knowledge, Workspace& workspace, const Arene& arene,
-                                        const Conditions& conditions, double relative_rate) {
+std::vector<std::string> reaction_notes(const Knowledge& knowledge, const Rules& rules, Workspace& workspace,
+                                        const Arene& arene, const Conditions& conditions,
+                                        double relative_rate) {
     const auto& tables = knowledge.tables;
     const auto& reaction = reaction_of(tables, conditions);
     std::vector<std::string> notes = arene.notes;
@@ -226,11 +248,10 @@ std::vector<std::string> reaction_notes(const Knowledge& knowledge, Workspace& w
         }
     if (!reaction.note.empty())
         notes.push_back(reaction.note);
-    for (const auto& note : tables.cautions)
-        if (note.severity == 0 && applies_to(note.reactions, reaction) &&
-            (note.substrate_smarts.empty() ||
-             occurs(workspace, *arene.molecule, note.substrate_smarts, note.code)))
-            notes.push_back(note.text);
+    for (const auto* note : rules.notes)
+        if (note->substrate_smarts.empty() ||
+            occurs(workspace, *arene.molecule, note->substrate_smarts, note->code))
+            notes.push_back(note->text);
     if (const auto limit = figure(reaction, "encounter_limit"); limit && relative_rate > *limit)
         notes.push_back(fmt::format("the relative rate is that of the ring itself; in this medium encounter "
                                     "holds every ring to about "

@@ -226,8 +226,9 @@ int new_group_index(const Tables& tables, const Reaction& reaction) {
 
 StepWorker step_worker(const Knowledge& knowledge, std::shared_ptr<const FamilyModel> model,
                        const Conditions& conditions, const Draws& draws) {
-    return {&knowledge,      conditions,    draws, under_conditions(std::move(model), conditions),
-            new_workspace(), Normals(draws)};
+    return {&knowledge,    rules_for(knowledge.tables, conditions.reaction), conditions,
+            draws,         under_conditions(std::move(model), conditions),   new_workspace(),
+            Normals(draws)};
 }
 
 Answer<StepAnswer> answer_step(const Knowledge& knowledge, const FamilyModel& model, const Arene& arene,
@@ -244,7 +245,7 @@ Answer<StepAnswer> answer_step(StepWorker& worker, const Arene& arene) {
     const auto& tables = knowledge.tables;
     const auto& reaction = tables.reactions[static_cast<std::size_t>(conditions.reaction)];
     const auto found = sites(arene, reaction.new_group, workspace);
-    if (const auto refused = refuse_by_name(tables, workspace, arene, conditions, found))
+    if (const auto refused = refuse_by_name(worker.rules, workspace, arene, found))
         return *refused;
     const auto placed = placed_sites(arene, found);
     auto factors = site_factors(*worker.model, arene.smiles, placed, true);
@@ -293,8 +294,9 @@ Answer<StepAnswer> answer_step(StepWorker& worker, const Arene& arene) {
     for (std::size_t i = 0; i < found.size(); ++i)
         if (drawn.percent[i].value >= told)
             notable.push_back(found[i]);
-    answer.cautions = cautions_for(tables, workspace, arene, conditions, notable);
-    answer.notes = reaction_notes(knowledge, workspace, arene, conditions, drawn.relative_rate.value);
+    answer.cautions = cautions_for(worker.rules, workspace, arene, notable);
+    answer.notes =
+        reaction_notes(knowledge, worker.rules, workspace, arene, conditions, drawn.relative_rate.value);
     return answer;
 }
 

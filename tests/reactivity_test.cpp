@@ -184,7 +184,7 @@ TEST(Reactivity, NitroHoweverItIsWritten) {
     const auto arene =
         answered(parse_arene(other, knowledge().groups, "O=[N+]([O-])c1cccc([N+](=O)[O-])c1"), "arene");
     const auto conditions = answered(choose("nitration-mixed-acid"), "defaults");
-    const auto refused = refuse_by_name(other, *new_workspace(), arene, conditions, {});
+    const auto refused = refuse_by_name(rules_for(other, conditions.reaction), *new_workspace(), arene, {});
     ASSERT_TRUE(refused);
     EXPECT_THAT(refused->reason, HasSubstr("third nitro group"));
 }

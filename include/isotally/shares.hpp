@@ -81,6 +81,7 @@ ShareDraws draw_shares(const Tables& tables, std::string_view family, const std:
 /// answers are those of answer_step below, byte for byte.
 struct StepWorker {
     const Knowledge* knowledge;
+    Rules rules;
     Conditions conditions;
     Draws draws;
     std::shared_ptr<SiteModel> model;

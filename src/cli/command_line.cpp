@@ -171,7 +171,7 @@ Error usage_error(const CLI::ParseError& e, const CLI::App& program, int argc, c
     return {ErrorKind::usage, "command line", cli::printable(e.what()) + " (isotally --help tells more)"};
 }
 
-int run(int argc, char** argv, std::istream& in, std::ostream& out, std::ostream& err) {
+int run(int argc, char** argv, std::istream& in, std::ostream& out, std::ostream& err, bool do_it) {
     Options options;
     CLI::App program(
         "isotally: shares of isomers in electrophilic substitution of benzenes, and how sure they are",
@@ -196,6 +196,8 @@ int run(int argc, char** argv, std::istream& in, std::ostream& out, std::ostream
         throw usage_error(e, program, argc, argv);
     }
     options.step.quiet = options.quiet;
+    if (!do_it)
+        return 0;
     if (program.got_subcommand("step"))
         return cli::step_command(options.step, load(options), in, out, err);
     if (program.got_subcommand("check"))
@@ -217,10 +219,10 @@ int run(int argc, char** argv, std::istream& in, std::ostream& out, std::ostream
 
 namespace cli {
 
-int command_line(int argc, char** argv, std::istream& in, std::ostream& out, std::ostream& err) {
+int command_line(int argc, char** argv, std::istream& in, std::ostream& out, std::ostream& err, bool do_it) {
     const bool json = wants_json(argc, argv);
     try {
-        const int status = run(argc, argv, in, out, err);
+        const int status = run(argc, argv, in, out, err, do_it);
         out.flush();
         if (!out)
             return fail({ErrorKind::output, "standard output", "it can't be written"}, false, out, err);

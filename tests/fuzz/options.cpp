@@ -1,4 +1,4 @@
-// The command line: one word a line. What writes files is left out.
+// The command line: one word a line, read and not done.
 #include <sstream>
 #include <vector>
 
@@ -10,8 +10,6 @@ extern "C" int LLVMFuzzerTestOneInput(const std::uint8_t* data, std::size_t size
     std::vector<std::string> words{"isotally"};
     std::istringstream lines(fuzz::text_of(data, size));
     for (std::string line; std::getline(lines, line);) {
-        if (line.find("--e") != line.npos || line.find("--s") != line.npos || line.find("--d") != line.npos)
-            return 0;
         words.push_back(line.substr(0, line.find('\0')));
     }
     std::vector<char*> arguments;
@@ -19,8 +17,9 @@ extern "C" int LLVMFuzzerTestOneInput(const std::uint8_t* data, std::size_t size
         arguments.push_back(word.data());
     std::istringstream in("Cc1ccccc1\n");
     std::ostringstream out, err;
-    const int status = cli::command_line(static_cast<int>(arguments.size()), arguments.data(), in, out, err);
-    fuzz::require(status >= 0 && status <= 5);
+    const int status =
+        cli::command_line(static_cast<int>(arguments.size()), arguments.data(), in, out, err, false);
+    fuzz::require(status == 0 || status == 2);
     fuzz::require(status == 0 || !err.str().empty());
     return 0;
 }

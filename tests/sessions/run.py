@@ -4,8 +4,8 @@ run.py [--rewrite] [--program PATH] [DOCUMENT ...]     (all documents, the newes
 
 In a block a line "$ ..." is a command, lines "> ..." after it continue it, and the rest is its output,
 standard output and standard error together. A command that fails ends in the line "(exit status N)".
-The commands of one document run in order in a folder of their own that holds copies of tables/ and
-validation/. A document without any command is a fault.
+The commands of one document run in order in a folder of their own that holds copies of tables/,
+validation/ and tests/validation/. A document without any command is a fault.
 """
 
 import argparse
@@ -48,7 +48,7 @@ def replay(document, program):
     """The text of the document with the output that its commands have now, and their number."""
     count = 0
     with tempfile.TemporaryDirectory() as folder:
-        for name in ("tables", "validation"):
+        for name in ("tables", "validation", "tests/validation"):
             if (ROOT / name).is_dir():
                 shutil.copytree(ROOT / name, Path(folder) / name)
 
