@@ -104,8 +104,8 @@ TEST(CliList, InterruptedItSaysWhereToGoOn) {
     for (int i = 0; i < 40; ++i)
         input += many_lines();
     const auto list = folder.write("list.smi", input);
-    const auto said = shell("timeout --foreground -s INT 0.4 " ISOTALLY_PROGRAM " step - --reaction " + nitration + " < " +
-                            list + " 2>" + (folder / "err") + " > " + (folder / "out") +
+    const auto said = shell("timeout --foreground -s INT 0.4 " ISOTALLY_PROGRAM " step - --reaction " +
+                            nitration + " < " + list + " 2>" + (folder / "err") + " > " + (folder / "out") +
                             "; echo $?; wc -l < " + (folder / "out") + "; tail -n 1 " + (folder / "err"));
     const auto lines = lines_of(said);
     ASSERT_EQ(lines.size(), 3u) << said;

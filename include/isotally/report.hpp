@@ -9,7 +9,7 @@
 
 namespace isotally {
 
-/// One JSON document, format isotally.step.1 (contract of the fields: README). `indent` -1: one line.
+/// One JSON document, format isotally.step.1. `indent` -1: one line.
 std::string step_json(const Tables& tables, const StepAnswer& answer, const Draws& draws, int indent);
 
 /// The same on one line, with what stood beside the molecule in a list as `label` (if anything did).

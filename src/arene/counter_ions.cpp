@@ -62,7 +62,7 @@ Answer<std::unique_ptr<RDKit::RWMol>> without_counter_ions(std::unique_ptr<RDKit
     if (RDKit::MolOps::getMolFrags(*mol, fragment_of_atom) == 1) {
         if (is_inner_salt(*mol)) {
             neutralise(*mol);
-            notes.push_back("an inner salt, taken in its uncharged form");
+            notes.emplace_back("an inner salt, taken in its uncharged form");
         }
         return mol;
     }

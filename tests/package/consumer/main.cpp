@@ -3,5 +3,6 @@
 #include <isotally/tables.hpp>
 
 int main() {
-    std::cout << "nearest to methil: " << isotally::nearest_word("methil", {"ethyl", "methyl", "phenyl"}) << '\n';
+    std::cout << "nearest to methil: " << isotally::nearest_word("methil", {"ethyl", "methyl", "phenyl"})
+              << '\n';
 }
