@@ -6,6 +6,7 @@
 #include <optional>
 #include <stdexcept>
 #include <string>
+#include <tuple>
 #include <variant>
 
 #include "isotally/arene.hpp"
@@ -88,8 +89,19 @@ inline Answer<StepAnswer> ask(const std::string& molecule, const std::string& id
     const auto chosen = choose_conditions(tables(), reaction(id), asked.temperature_C, asked.acid_percent);
     if (const auto* refused = refusal(chosen))
         return *refused;
-    return answer_step(knowledge(), model(reaction_row(id).family), std::get<Arene>(read),
-                       std::get<Conditions>(chosen), asked.draws);
+    // one worker for each question: thousands of molecules are asked, also under the sanitizers
+    const auto& at = std::get<Conditions>(chosen);
+    static std::map<std::tuple<int, double, double, double, int, std::uint64_t>, StepWorker> workers;
+    const std::tuple key(at.reaction, at.temperature_C, at.acid_percent, asked.draws.level, asked.draws.count,
+                         asked.draws.seed);
+    auto worker = workers.find(key);
+    if (worker == workers.end())
+        worker = workers
+                     .emplace(key, step_worker(knowledge(),
+                                               {std::shared_ptr<void>(), &model(reaction_row(id).family)}, at,
+                                               asked.draws))
+                     .first;
+    return answer_step(worker->second, std::get<Arene>(read));
 }
 
 inline StepAnswer step(const std::string& molecule, const std::string& id, const Asked& asked = {}) {
