@@ -53,6 +53,14 @@ int find_reaction(const Tables& tables, std::string_view id) {
     return index_of(tables.reactions, id);
 }
 
+std::vector<std::string> families_of(const Tables& tables) {
+    std::vector<std::string> families;
+    for (const auto& reaction : tables.reactions)
+        if (std::find(families.begin(), families.end(), reaction.family) == families.end())
+            families.push_back(reaction.family);
+    return families;
+}
+
 bool applies_to(const std::vector<std::string>& reactions, std::string_view id, std::string_view family) {
     return std::any_of(reactions.begin(), reactions.end(),
                        [&](const std::string& word) { return word == "*" || word == id || word == family; });

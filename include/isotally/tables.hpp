@@ -177,6 +177,9 @@ Tables parse_tables(const std::vector<TableFile>& files);
 int find_substituent(const Tables& tables, std::string_view id);
 int find_reaction(const Tables& tables, std::string_view id);
 
+/// The families of the reactions, each once, in the order of reactions.csv.
+std::vector<std::string> families_of(const Tables& tables);
+
 /// Whether a row's `reactions` (ids, families or "*") name this one.
 bool applies_to(const std::vector<std::string>& reactions, std::string_view id, std::string_view family);
 bool applies_to(const std::vector<std::string>& reactions, const Reaction& reaction);

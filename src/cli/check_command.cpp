@@ -9,18 +9,6 @@
 #include "status.hpp"
 
 namespace isotally::cli {
-namespace {
-
-std::vector<std::string> families_of(const Tables& tables) {
-    std::vector<std::string> families;
-    for (const auto& reaction : tables.reactions)
-        if (std::find(families.begin(), families.end(), reaction.family) == families.end())
-            families.push_back(reaction.family);
-    return families;
-}
-
-}  // namespace
-
 int check_command(const CheckRequest& request, const Knowledge& knowledge, std::ostream& out) {
     const auto families = families_of(knowledge.tables);
     auto wanted = request.sets;

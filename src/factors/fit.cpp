@@ -7,13 +7,6 @@
 
 namespace isotally {
 
-using factors::Form;
-using factors::Prior;
-using factors::Settings;
-using factors::Term;
-using factors::Type;
-using factors::Unknown;
-
 namespace factors {
 namespace {
 
@@ -192,10 +185,6 @@ Projection project(const FamilyModel& model, const Form& form) {
 double variance_of(const FamilyModel& model, const Form& form, const Projection& seen) {
     return prior_variance(model.fit->settings, form) - seen.seen.squaredNorm() + seen.put_back.squaredNorm();
 }
-
-}  // namespace factors
-
-namespace factors {
 
 RowMarginal row_marginal(const FamilyModel& model, const Observation& observation, const ObservedRow& row) {
     const auto& fit = *model.fit;

@@ -108,11 +108,7 @@ void make_rates_linear(Knowledge& knowledge, const std::string& family, const st
 }  // namespace
 
 void make_linear(Knowledge& knowledge) {
-    std::vector<std::string> families;
-    for (const auto& reaction : knowledge.tables.reactions)
-        if (std::find(families.begin(), families.end(), reaction.family) == families.end())
-            families.push_back(reaction.family);
-    for (const auto& family : families) {
+    for (const auto& family : families_of(knowledge.tables)) {
         std::vector<bool> use(knowledge.observations.size());
         for (std::size_t i = 0; i < use.size(); ++i)
             use[i] = knowledge.tables

@@ -243,12 +243,8 @@ SiteFactors site_factors(const FamilyModel& model, const Conditions& conditions,
 
 std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge& knowledge) {
     std::map<std::string, std::size_t> counts;
-    std::vector<std::string> families;
-    for (const auto& reaction : knowledge.tables.reactions) {
-        if (std::find(families.begin(), families.end(), reaction.family) != families.end())
-            continue;
-        families.push_back(reaction.family);
-        const auto model = fit_family(knowledge, reaction.family);
+    for (const auto& family : families_of(knowledge.tables)) {
+        const auto model = fit_family(knowledge, family);
         for (std::size_t i = 0; i < knowledge.tables.substituents.size(); ++i) {
             std::string best;  // of its three positions
             for (const auto relation : {ortho, meta, para}) {
@@ -258,7 +254,7 @@ std::vector<std::pair<std::string, std::size_t>> count_evidence(const Knowledge&
                     (contribution.evidence == "inferred" && best != "measured"))
                     best = contribution.evidence;
             }
-            ++counts[reaction.family + ", " + best];
+            ++counts[family + ", " + best];
         }
     }
     return {counts.begin(), counts.end()};

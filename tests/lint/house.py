@@ -30,7 +30,7 @@ FLOATING = re.compile(r"(?<![\w.])(?:\d[\d']*\.[\d']*(?:[eE][+-]?\d+)?|\.\d+(?:[
 
 def sources(folder, *tops):
     for top in tops:
-        yield from sorted(p for p in (folder / top).rglob("*") if p.suffix in (".cpp", ".hpp"))
+        yield from sorted(p for p in (folder / top).rglob("*") if p.suffix in (".cpp", ".hpp", ".inc"))
 
 
 def includes(path):

@@ -111,14 +111,6 @@ Knowledge knowledge_of(const Ingredient& ingredient) {
     return taught;
 }
 
-std::vector<std::string> families_of(const Tables& tables) {
-    std::vector<std::string> families;
-    for (const auto& reaction : tables.reactions)
-        if (std::find(families.begin(), families.end(), reaction.family) == families.end())
-            families.push_back(reaction.family);
-    return families;
-}
-
 /// Differences (full model less the model without the ingredient), summed by family and compound.
 struct Sums {
     std::map<std::string, std::pair<double, int>> by_compound;
@@ -146,7 +138,7 @@ Gain gain_of(const Sums& sums) {
 }
 
 struct Columns {
-    Sums poly_score, poly_points, score, points, limits, rates;
+    Sums poly_score, poly_points, score, points, limits, rates, sulfonation_points;
 };
 
 using Checked = std::map<std::string, std::vector<CheckedRecord>>;
@@ -173,6 +165,8 @@ Columns compare(const Checked& with, const Checked& without) {
                 columns.points.add(compound, points);
                 if (poly)
                     columns.poly_points.add(compound, points);
+                if (family == "sulfonation")
+                    columns.sulfonation_points.add(compound, points);
             }
             if (now.complete && now.has_ratios) {
                 const double score = now.log_score - then->log_score;
@@ -205,7 +199,7 @@ void print_table(const Knowledge& full, LeftOut left_out) {
     const bool compound = left_out == LeftOut::compound;
     std::printf("\n| ingredient | nitration-poly: log score | nitration-poly: points | all: log score | "
                 "all: points |%s\n|---|---|---|---|---|%s\n",
-                compound ? " limits | rates |" : "", compound ? "---|---|" : "");
+                compound ? " limits | rates |" : " sulfonation: points |", compound ? "---|---|" : "---|");
     const auto with = check_all(full, full, left_out);
     for (const auto& ingredient : ingredients()) {
         if (!compound && !ingredient.of_conditions)
@@ -223,6 +217,8 @@ void print_table(const Knowledge& full, LeftOut left_out) {
             compare_rates(full, taught, asked, columns);
             print_gain(columns.limits, 3);
             print_gain(columns.rates, 3);
+        } else {
+            print_gain(columns.sulfonation_points, 2);
         }
         std::printf("\n");
     }
